@@ -1,0 +1,37 @@
+import { sveltekit } from '@sveltejs/kit/vite';
+import tailwindcss from '@tailwindcss/vite';
+import { defineConfig } from 'vitest/config';
+
+export default defineConfig({
+	plugins: [tailwindcss(), sveltekit()],
+	test: {
+		// Three suites by what they need: nothing, the services, the services and the built server.
+		projects: [
+			{
+				extends: true,
+				test: { name: 'unit', environment: 'node', include: ['src/**/*.test.ts', 'tests/reference/**/*.test.ts', 'tests/traces/**/*.test.ts'] }
+			},
+			{
+				extends: true,
+				test: {
+					name: 'integration',
+					environment: 'node',
+					include: ['tests/integration/**/*.test.ts'],
+					testTimeout: 60_000,
+					hookTimeout: 120_000
+				}
+			},
+			{
+				extends: true,
+				test: {
+					name: 'browser',
+					environment: 'node',
+					include: ['tests/browser/**/*.test.ts'],
+					fileParallelism: false,
+					testTimeout: 120_000,
+					hookTimeout: 180_000
+				}
+			}
+		]
+	}
+});
