@@ -35,7 +35,10 @@ const oneWayImports = {
 			const name = node.source?.value;
 			if (typeof name !== 'string') return;
 			if (from.layer === 'server' && /^\$(app|env)\//.test(name))
-				context.report({ node, message: 'Server code runs outside Vite too (worker, admin): no $app or $env here.' });
+				context.report({
+					node,
+					message: 'Server code runs outside Vite too (worker, admin): no $app or $env here.'
+				});
 			const target = name.startsWith('$lib/')
 				? '/src/lib/' + name.slice(5)
 				: name.startsWith('.')
@@ -68,10 +71,46 @@ export default ts.config(
 	{
 		languageOptions: {
 			globals: Object.fromEntries(
-				['process', 'console', 'Buffer', 'URL', 'URLSearchParams', 'setTimeout', 'clearTimeout', 'setInterval', 'clearInterval', 'setImmediate',
-				 'fetch', 'Request', 'Response', 'Headers', 'AbortController', 'AbortSignal', 'TextDecoder', 'TextEncoder', 'crypto', 'performance',
-				 'window', 'document', 'navigator', 'localStorage', 'location', 'HTMLElement', 'ResizeObserver', 'MutationObserver', 'requestAnimationFrame',
-				 'cancelAnimationFrame', 'XMLHttpRequest', 'FormData', 'File', 'Blob', 'matchMedia', 'ReadableStream', 'structuredClone', 'getComputedStyle', 'history'
+				[
+					'process',
+					'console',
+					'Buffer',
+					'URL',
+					'URLSearchParams',
+					'setTimeout',
+					'clearTimeout',
+					'setInterval',
+					'clearInterval',
+					'setImmediate',
+					'fetch',
+					'Request',
+					'Response',
+					'Headers',
+					'AbortController',
+					'AbortSignal',
+					'TextDecoder',
+					'TextEncoder',
+					'crypto',
+					'performance',
+					'window',
+					'document',
+					'navigator',
+					'localStorage',
+					'location',
+					'HTMLElement',
+					'ResizeObserver',
+					'MutationObserver',
+					'requestAnimationFrame',
+					'cancelAnimationFrame',
+					'XMLHttpRequest',
+					'FormData',
+					'File',
+					'Blob',
+					'matchMedia',
+					'ReadableStream',
+					'structuredClone',
+					'getComputedStyle',
+					'history'
 				].map((name) => [name, 'readonly'])
 			)
 		}
@@ -86,7 +125,10 @@ export default ts.config(
 		rules: {
 			'@typescript-eslint/no-floating-promises': 'error',
 			'@typescript-eslint/no-misused-promises': ['error', { checksVoidReturn: { arguments: false } }],
-			'@typescript-eslint/switch-exhaustiveness-check': ['error', { considerDefaultExhaustiveForUnions: true }]
+			'@typescript-eslint/switch-exhaustiveness-check': [
+				'error',
+				{ considerDefaultExhaustiveForUnions: true }
+			]
 		}
 	},
 	{
@@ -101,5 +143,8 @@ export default ts.config(
 			'svelte/no-navigation-without-resolve': 'off'
 		}
 	},
-	{ files: ['migrations/**/*.ts'], rules: { '@typescript-eslint/no-explicit-any': 'off', 'max-lines': 'off' } }
+	{
+		files: ['migrations/**/*.ts'],
+		rules: { '@typescript-eslint/no-explicit-any': 'off', 'max-lines': 'off' }
+	}
 );

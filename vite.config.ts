@@ -9,7 +9,11 @@ export default defineConfig({
 		projects: [
 			{
 				extends: true,
-				test: { name: 'unit', environment: 'node', include: ['src/**/*.test.ts', 'tests/reference/**/*.test.ts', 'tests/traces/**/*.test.ts'] }
+				test: {
+					name: 'unit',
+					environment: 'node',
+					include: ['src/**/*.test.ts', 'tests/reference/**/*.test.ts', 'tests/traces/**/*.test.ts']
+				}
 			},
 			{
 				extends: true,

@@ -1,0 +1,20 @@
+import type { Principal } from '$lib/server/access';
+import type { Deps } from '$lib/server/deps';
+
+declare global {
+	namespace App {
+		interface Error {
+			message: string;
+			/** Quote it when asking for help: the log has the rest. */
+			requestId?: string;
+		}
+		interface Locals {
+			deps: Deps;
+			who: Principal | null;
+			requestId: string;
+			theme: 'light' | 'dark' | 'system';
+		}
+	}
+}
+
+export {};

@@ -1,0 +1,61 @@
+import { error, type RequestEvent } from '@sveltejs/kit';
+import { RateLimiterMemory } from 'rate-limiter-flexible';
+import { requireMay, type Action, type Principal } from '../access';
+import type { Config } from '../config';
+import { problemOf } from '../db';
+import { Problem } from '../problem';
+
+export const SESSION_COOKIE = 'session';
+
+/** Strict enough for a browser on plain loopback too: `Secure` as soon as the site is served by https. */
+export function sessionCookie(config: Config) {
+	return { path: '/', httpOnly: true, sameSite: 'lax', secure: config.origin.startsWith('https:') } as const;
+}
+
+const OPEN_ROUTES = new Set(['/sign-in', '/api/v1/health', '/api/v1/openapi.json', '/readyz', '/theme']);
+
+/** Routes that answer before anyone is known. */
+export function isOpenRoute(routeId: string | null, pathname: string): boolean {
+	return (routeId !== null && OPEN_ROUTES.has(routeId)) || pathname.startsWith('/_app/');
+}
+
+const REQUESTS_PER_MINUTE = 3000;
+const limiter = new RateLimiterMemory({ points: REQUESTS_PER_MINUTE, duration: 60 });
+
+/** @throws Problem 429 for a person or token that asks without pause */
+export async function perPrincipal(who: Principal): Promise<void> {
+	try {
+		await limiter.consume(who.via.id);
+	} catch {
+		throw new Problem(
+			429,
+			'Too many requests',
+			`At most ${REQUESTS_PER_MINUTE} requests a minute.`,
+			{},
+			{ retryAfterS: 10 }
+		);
+	}
+}
+
+/** The signed-in person of a page request, if their role may do this. */
+export function personMay(locals: App.Locals, action: Action): Principal {
+	if (!locals.who) error(401, 'Sign in first.');
+	try {
+		requireMay(locals.who, action);
+	} catch (cause) {
+		if (cause instanceof Problem) error(cause.status, cause.message);
+		throw cause;
+	}
+	return locals.who;
+}
+
+/** Runs a page's reads; an expected refusal becomes that page's error, anything else stays a bug. */
+export async function pageData<T>(event: Pick<RequestEvent, 'locals'>, work: () => Promise<T>): Promise<T> {
+	try {
+		return await work();
+	} catch (cause) {
+		const problem = problemOf(cause);
+		if (!problem) throw cause;
+		error(problem.status, { message: problem.message, requestId: event.locals.requestId });
+	}
+}
