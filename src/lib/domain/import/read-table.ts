@@ -78,15 +78,16 @@ export function readTable(bytes: Uint8Array): ReadTableResult {
 	const { text, newline, dialect, layout, nulBytes } = opened;
 	const builder = new TableBuilder(layout, dialect);
 	let unclosed = false;
-	Papa.parse<string[]>(text, {
+	const config: Papa.ParseConfig<string[]> & { download?: false; worker?: false; chunkSize: number } = {
 		delimiter: dialect.delimiter,
 		newline,
 		chunkSize: CHUNK_CHARACTERS,
-		chunk: ({ data, errors }: Papa.ParseResult<string[]>) => {
+		chunk: ({ data, errors }) => {
 			if (errors.some((error) => error.code === 'MissingQuotes')) unclosed = true;
 			builder.addRows(data);
 		}
-	});
+	};
+	Papa.parse<string[]>(text, config);
 	if (unclosed) return { ok: false, error: UNCLOSED };
 	const table = builder.finish();
 	if (table.rows === 0)
