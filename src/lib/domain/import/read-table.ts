@@ -78,18 +78,21 @@ export function readTable(bytes: Uint8Array): ReadTableResult {
 	const { text, newline, dialect, layout, nulBytes } = opened;
 	const builder = new TableBuilder(layout, dialect);
 	let unclosed = false;
-	const config: Papa.ParseConfig<string[]> & { download?: false; worker?: false; chunkSize: number } = {
+	let table: Table | null = null;
+	Papa.parse<string[]>(text, {
 		delimiter: dialect.delimiter,
 		newline,
 		chunkSize: CHUNK_CHARACTERS,
-		chunk: ({ data, errors }) => {
+		chunk: ({ data, errors }: Papa.ParseResult<string[]>) => {
 			if (errors.some((error) => error.code === 'MissingQuotes')) unclosed = true;
 			builder.addRows(data);
+		},
+		complete: () => {
+			table = builder.finish();
 		}
-	};
-	Papa.parse<string[]>(text, config);
+	});
 	if (unclosed) return { ok: false, error: UNCLOSED };
-	const table = builder.finish();
+	table ??= builder.finish();
 	if (table.rows === 0)
 		return {
 			ok: false,
