@@ -1,0 +1,62 @@
+import type { CellFacts, EngineFacts } from '../model';
+import { fitAt } from '../statistics/local-fit';
+
+export interface CountedInertia {
+	inertiaKgM2: number;
+	/** What is in it, for the method line of a figure. */
+	counted: string[];
+	/** What belongs in it and is unknown: the correction is too small by its share. */
+	missing: string[];
+}
+
+/**
+ * Inertia on the engine's side of where torque is measured: in-line flange = engine + shaft to its sensing plane; load cell on
+ * a swinging stator = that and the rotor.
+ * @returns kg·m², or null where the engine's own inertia is unknown (then no correction is made)
+ */
+export function inertiaBeforeSensor(engine: EngineFacts, cell: CellFacts): CountedInertia | null {
+	if (engine.inertiaKgM2 === null) return null;
+	const parts: [name: string, value: number | null][] = [
+		['engine', engine.inertiaKgM2],
+		['shaft', cell.shaftInertiaKgM2]
+	];
+	if (cell.torqueAt === 'stator') parts.push(['rotor', cell.rotorInertiaKgM2]);
+	return {
+		inertiaKgM2: parts.reduce((sum, [, value]) => sum + (value ?? 0), 0),
+		counted: parts.filter(([, value]) => value !== null).map(([name]) => name),
+		missing: parts.filter(([, value]) => value === null).map(([name]) => name)
+	};
+}
+
+/**
+ * Torque at the engine: `T_dyno + I·dω/dt`.
+ * @param torqueNm at the sensor, N·m @param inertiaKgM2 `inertiaBeforeSensor`, kg·m² @param accelerationRadS2 dω/dt, rad/s²
+ * @returns N·m
+ */
+export function engineTorqueNm(torqueNm: number, inertiaKgM2: number, accelerationRadS2: number): number {
+	return torqueNm + inertiaKgM2 * accelerationRadS2;
+}
+
+/**
+ * dω/dt at each sample: slope of a quadratic fitted by least squares to the speeds within ±windowS/2 of it, never a raw difference.
+ * @param timeS s, ascending @param speedRpm rev/min; unknown samples are left out
+ * @param windowS whole width of the window, s; default 1
+ * @returns rad/s²; NaN where the window holds fewer than 5 known samples or no spread of time
+ */
+export function angularAccelerationRadS2(
+	timeS: ArrayLike<number>,
+	speedRpm: ArrayLike<number>,
+	windowS = 1
+): Float64Array {
+	const slope = new Float64Array(timeS.length);
+	let first = 0;
+	let end = 0;
+	for (let i = 0; i < timeS.length; i++) {
+		while (first < i && timeS[first]! < timeS[i]! - windowS / 2) first++;
+		end = Math.max(end, i);
+		while (end < timeS.length && timeS[end]! <= timeS[i]! + windowS / 2) end++;
+		const fit = fitAt(timeS, speedRpm, first, end, timeS[i]!, 2, 5);
+		slope[i] = fit ? (fit[1]! * 2 * Math.PI) / 60 : NaN;
+	}
+	return slope;
+}
