@@ -1,6 +1,6 @@
 import { DIMENSIONS, type Dimension } from '../units/dimensions';
 
-/** Where on the engine a temperature or pressure is taken; engineering names, see DEVELOPERS.md. */
+/** Where on the engine a temperature or pressure is taken. */
 export type Station = 'ambient' | 'inlet' | 'boost' | 'manifold' | 'exhaust';
 
 export interface Channel {

@@ -1,6 +1,6 @@
 import { sameKind } from '../units/dimensions';
 import { parseUnit, refusedUnit, type Unit } from '../units/parse';
-import { ALIASES, NOT_A_CHANNEL, type AliasRow } from './aliases';
+import { namedBy, noChannelBecause, type NamedChannel } from './aliases';
 import { CATALOGUE, channelOf } from './catalogue';
 
 export interface Classification {
@@ -46,25 +46,6 @@ function takeIndex(words: readonly string[]): { words: string[]; index: number |
 const fits = (code: string, unit: Unit | null) =>
 	unit === null || sameKind(unit.dimension, CATALOGUE.get(code)?.dimension ?? 'ratio');
 
-interface Match {
-	row: AliasRow;
-	score: number;
-	exact: boolean;
-}
-
-function matches(words: readonly string[]): Match[] {
-	const phrase = words.join(' ');
-	const joined = words.join('');
-	const found: Match[] = [];
-	for (const row of ALIASES) {
-		if (row.exact.some((alias) => alias === phrase || alias.replaceAll(' ', '') === joined))
-			found.push({ row, score: row.atMost ?? 0.95, exact: true });
-		else if (row.words?.every((group) => group.some((word) => words.includes(word))))
-			found.push({ row, score: Math.min(row.atMost ?? 0.85, words.length <= 4 ? 0.85 : 0.7), exact: false });
-	}
-	return found.sort((a, b) => b.score - a.score);
-}
-
 /** Where the header names the thing and the unit its kind: a flow by volume, a temperature under a pressure's name. */
 const BY_UNIT: Readonly<Record<string, readonly string[]>> = {
 	fuel_flow: ['fuel_flow_volume'],
@@ -77,8 +58,6 @@ const BY_UNIT: Readonly<Record<string, readonly string[]>> = {
 	exhaust_temp: ['exhaust_pressure'],
 	exhaust_pressure: ['exhaust_temp'],
 	boost_pressure: ['manifold_temp'],
-	power: ['electrical_power'],
-	coolant_temp: [],
 	speed: ['vehicle_speed']
 };
 
@@ -140,35 +119,34 @@ export function classifyHeader(name: string, unitText: string | null): Classific
 	if (refused) return nothing(refused, null);
 	const all = wordsOf(name);
 	if (all.length === 0) return nothing('The column has no name.', unit);
-	const phrase = all.join(' ');
-	const not = NOT_A_CHANNEL.find((entry) => entry.words.includes(phrase));
-	if (not) return nothing(not.because, unit);
+	const not = noChannelBecause(all);
+	if (not) return nothing(not, unit);
 
 	const counted = takeIndex(all);
 	// `CO2` and `lambda 1` are names; in `T_exh_2` the number counts.
-	const whole = matches(all);
+	const whole = namedBy(all);
 	const isName = whole.some((match) => match.exact);
-	const stem = isName || counted.index === null ? [] : matches(counted.words);
+	const stem = isName || counted.index === null ? [] : namedBy(counted.words);
 	const found = stem.length > 0 ? stem : whole;
 	const index = stem.length > 0 ? counted.index : null;
 	const reasons: string[] = [];
 	if (unitText != null && unitText.trim() !== '' && unit === null)
 		reasons.push(`The unit “${unitText.trim()}” is not known.`);
 
-	const best = found.find((match) => fits(match.row.code, unit));
-	if (best) return grade(best, index, unit, reasons);
+	const best = found.find((match) => fits(match.code, unit));
+	if (best) return grade(best, all, index, unit, reasons);
 
 	const named = found[0];
-	const other = named && BY_UNIT[named.row.code]?.find((code) => fits(code, unit));
+	const other = named && BY_UNIT[named.code]?.find((code) => fits(code, unit));
 	if (named && other && unit) {
-		reasons.push(`The header reads like ${named.row.code}; its unit ${unit.unit} makes it ${other}.`);
+		reasons.push(`The header reads like ${named.code}; its unit ${unit.unit} makes it ${other}.`);
 		return { code: coded(other, index), confidence: Math.min(0.9, named.score - 0.03), reasons, unit };
 	}
 	if (named && unit)
 		return {
-			code: coded(named.row.code, index),
+			code: coded(named.code, index),
 			confidence: 0.1,
-			reasons: [...reasons, `The header reads like ${named.row.code}, but ${unit.unit} is no unit of it.`],
+			reasons: [...reasons, `The header reads like ${named.code}, but ${unit.unit} is no unit of it.`],
 			unit
 		};
 	const open = withoutStation(counted.words, unit);
@@ -188,15 +166,25 @@ function coded(code: string, index: number | null): string {
 	return index !== null && channelOf(`${code}.${index}`) ? `${code}.${index}` : code;
 }
 
-function grade(match: Match, index: number | null, unit: Unit | null, reasons: string[]): Classification {
-	const { code } = match.row;
+/** A place or a letter alone: it needs its unit to say which quantity is meant. */
+const NEEDS_UNIT =
+	/^(coolant|exhaust|manifold|ambient|fuel|air|kraftstoff|kuehlwasser|kuehlmittel|boost|[a-mo-z]|alpha|p [a-z]|t [a-z])$/;
+
+function grade(
+	match: NamedChannel,
+	words: readonly string[],
+	index: number | null,
+	unit: Unit | null,
+	reasons: string[]
+): Classification {
+	const { code } = match;
 	let confidence = match.score;
 	if (reasons.length > 0) confidence = Math.min(confidence, 0.3);
-	if (match.row.because) reasons.push(match.row.because);
+	if (match.because) reasons.push(match.because);
 	if (unit) {
 		reasons.push(`Name and unit (${unit.unit}) agree.`);
 	} else if (code !== 'time' && CATALOGUE.get(code)?.dimension !== 'ratio') {
-		confidence = Math.min(confidence, 0.7);
+		confidence = Math.min(confidence, NEEDS_UNIT.test(words.join(' ')) ? 0.4 : 0.7);
 		reasons.push('The header gives no unit.');
 	}
 	return { code: coded(code, index), confidence, reasons, unit };
