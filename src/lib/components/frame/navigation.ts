@@ -1,0 +1,23 @@
+import type { IconName } from './icons';
+
+export interface Place {
+	href: string;
+	label: string;
+	icon: IconName;
+}
+
+/** The places of the rail, in the order of a day's work. */
+export const PLACES: readonly Place[] = [
+	{ href: '/runs', label: 'Runs', icon: 'runs' },
+	{ href: '/builds', label: 'Builds', icon: 'builds' },
+	{ href: '/bookings', label: 'Bookings', icon: 'bookings' },
+	{ href: '/trends', label: 'Trends', icon: 'trends' },
+	{ href: '/lab', label: 'Lab', icon: 'lab' }
+];
+
+export const ACCOUNT: Place = { href: '/account', label: 'Account', icon: 'account' };
+
+/** Whether `path` lies at or below `href`; `/runsheet` does not lie below `/runs`. */
+export function liesBelow(path: string, href: string): boolean {
+	return path === href || path.startsWith(`${href}/`);
+}
