@@ -7,6 +7,12 @@ export default {
 	compilerOptions: { runes: true },
 	kit: {
 		adapter: adapter(),
+		typescript: {
+			config: (config) => ({
+				...config,
+				include: [...config.include, '../migrations/**/*.ts', '../*.config.ts', '../*.config.js']
+			})
+		},
 		// A nonce per response; nothing inline is ever allowed without it.
 		csp: {
 			mode: 'nonce',

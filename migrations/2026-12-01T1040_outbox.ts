@@ -95,4 +95,18 @@ export async function up(db: Kysely<any>): Promise<void> {
 	);
 	await sql`grant execute on function jobs.enqueue(text, json, text, integer, integer, timestamptz)
 		to trunnion_lab, trunnion_client, trunnion_auth`.execute(db);
+
+	// Workers say that they live; health reads how many did lately, and a dead one's jobs are taken from it at once.
+	await sql`create table jobs.worker (
+		id text primary key,
+		seen_at timestamptz not null default now()
+	)`.execute(db);
+	await sql`grant select, insert, update, delete on jobs.worker to trunnion_queue`.execute(db);
+	await sql`create function jobs.workers_alive(within_s integer) returns bigint language sql stable security definer
+		set search_path = pg_catalog
+		as $$ select count(*) from jobs.worker where seen_at > now() - make_interval(secs => within_s) $$`.execute(
+		db
+	);
+	await sql`revoke all on function jobs.workers_alive(integer) from public`.execute(db);
+	await sql`grant execute on function jobs.workers_alive(integer) to trunnion_lab`.execute(db);
 }

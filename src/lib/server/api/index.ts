@@ -1,4 +1,5 @@
 export { openApiDocument, operationsOf } from './openapi';
 export { operation } from './operation';
+export * as fields from './fields';
 export { page, pageOf, PageQuery, readCursor } from './paging';
 export { problemResponse } from './problem-document';

@@ -1,0 +1,17 @@
+export { listRuns } from './list';
+export { openRun } from './open';
+export { acceptRun, addLogLine, closeRun, flagRun, getRun, listLogLines, runHistory, voidRun } from './record';
+export {
+	HistoryEntry,
+	LogLineView,
+	NewFlag,
+	NewLogLine,
+	NewRun,
+	OptionalReason,
+	Reason,
+	RunListItem,
+	RunQuery,
+	RunView,
+	type RunDetail,
+	type RunRow
+} from './schemas';

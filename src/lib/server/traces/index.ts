@@ -1,0 +1,4 @@
+export { mapTrace, TraceMap } from './map';
+export { processTrace } from './process';
+export { receiveTrace } from './receive';
+export { downloadOriginal, readCurve, readWindow, windowBytes, WindowQuery } from './view';

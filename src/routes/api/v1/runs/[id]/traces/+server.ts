@@ -1,0 +1,19 @@
+import { z } from 'zod';
+import { operation } from '$lib/server/api';
+import { receiveTrace } from '$lib/server/traces';
+
+export const POST = operation({
+	id: 'uploadTrace',
+	summary: 'Upload a trace: the file’s bytes as the body',
+	action: 'trace.upload',
+	query: z.object({ filename: z.string().max(1000).optional() }),
+	bytes: true,
+	answer: z.object({ id: z.string(), state: z.literal('received') }),
+	status: 202,
+	run: ({ deps, who, params, query, request }) =>
+		receiveTrace(deps, who, params.id!, {
+			filename: query.filename ?? null,
+			body: request.body,
+			declaredBytes: Number(request.headers.get('content-length') ?? Number.NaN) || null
+		})
+});
