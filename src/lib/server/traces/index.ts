@@ -1,4 +1,5 @@
 export { mapTrace, TraceMap } from './map';
 export { processTrace } from './process';
 export { receiveTrace } from './receive';
+export { recomputeAll } from './recompute';
 export { downloadOriginal, readCurve, readWindow, windowBytes, WindowQuery } from './view';

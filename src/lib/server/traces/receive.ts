@@ -120,8 +120,8 @@ async function record(
 }
 
 /** What is left of a file's name: its last part, without control characters or marks that turn text around. */
-export function safeName(given: string | null): string {
+function safeName(given: string | null): string {
 	const last = (given ?? '').split(/[\\/]/).pop() ?? '';
-	const clean = last.replace(/[\p{Cc}\p{Cf}]/gu, '').trim();
-	return clean.slice(0, 255) || 'trace';
+	const clean = last.toWellFormed().replace(/[\p{Cc}\p{Cf}]/gu, '').trim();
+	return [...clean].slice(0, 120).join('') || 'trace';
 }

@@ -1,6 +1,6 @@
 import { sql, type RawBuilder } from 'kysely';
 import { z } from 'zod';
-import { meanInterval } from '$lib/domain/statistics';
+import { tQuantile } from '$lib/domain/statistics/student-t';
 import type { Principal } from '../access';
 import { fields } from '../api';
 import { reading, type Trx } from '../db';
@@ -121,7 +121,7 @@ export async function readTrend(deps: Deps, who: Principal, query: z.output<type
 				n: row.n,
 				mean: row.mean,
 				sd: row.sd,
-				ci95: row.n > 1 && row.sd !== null ? meanInterval({ mean: row.mean, sd: row.sd, n: row.n }, 0.95) : null
+				ci95: intervalOf(row)
 			})),
 			points: points
 				.filter((point) => keys.has(point.groupId))
@@ -129,6 +129,12 @@ export async function readTrend(deps: Deps, who: Principal, query: z.output<type
 			pointsTotal: groups.reduce((sum, row) => sum + row.n, 0)
 		};
 	});
+}
+
+function intervalOf({ n, mean, sd }: GroupRow): [number, number] | null {
+	if (n < 2 || sd === null) return null;
+	const half = (tQuantile(0.975, n - 1) * sd) / Math.sqrt(n);
+	return [mean - half, mean + half];
 }
 
 /** Two clients may each have a build B12: then, and only then, the client's code goes before it. */
