@@ -76,6 +76,8 @@ export const UNIT_ROWS: readonly UnitRow[] = [
 	row('energy_flow', 'MJ/h', '1 MJ/h', ['MJ/hr', 'MJ/hour']),
 	row('energy_flow', 'kJ/s', '1 kW', ['kJ/sec']),
 	row('energy_flow', 'kJ/h', '1 kJ/h', ['kJ/hr']),
+	row('energy_flow', 'kJ/min', '60 kJ/h'),
+	row('energy_flow', 'kcal/min', '251.208 kJ/h'),
 	row('energy_flow', 'Btu/h', '1055.05585262 J/h', ['btu/hr', 'btuh']),
 	row('energy_flow', 'kcal/h', '4186.8 J/h', ['kcal/hr']),
 
