@@ -1,0 +1,161 @@
+import { spawn } from 'node:child_process';
+import { closeSync, existsSync, openSync, readFileSync, renameSync, statSync } from 'node:fs';
+import { createConnection, createServer } from 'node:net';
+import { setTimeout as sleep } from 'node:timers/promises';
+
+/**
+ * A process that was started here. `started` is the kernel's start time: with it a number that was given to
+ * another process since is never taken for ours.
+ * @typedef {{ pid: number, started: string }} Mark
+ * @typedef {Mark & { name: string, child: import('node:child_process').ChildProcess, log: string,
+ *   gone: Promise<string> }} Running `gone` settles with how it ended.
+ */
+
+/**
+ * The kernel's start time of a process in clock ticks, or null when there is no such process (or only a zombie).
+ * @param {number} pid
+ */
+function startTimeOf(pid) {
+	try {
+		const stat = readFileSync(`/proc/${pid}/stat`, 'utf8');
+		// The name in brackets may hold spaces and brackets itself: count from the last one.
+		const fields = stat.slice(stat.lastIndexOf(')') + 2).split(' ');
+		return fields[0] === 'Z' || fields[0] === 'X' ? null : (fields[19] ?? null);
+	} catch {
+		return null;
+	}
+}
+
+/**
+ * @param {number} pid
+ * @returns {Mark}
+ */
+export const markOf = (pid) => ({ pid, started: startTimeOf(pid) ?? '' });
+
+/** @param {Mark} mark */
+export const isAlive = (mark) => mark.started !== '' && startTimeOf(mark.pid) === mark.started;
+
+/**
+ * Ends exactly this process: the signal first, SIGKILL when it is still there after `patienceMs`.
+ * @param {Mark} mark
+ * @param {NodeJS.Signals} signal
+ * @param {number} patienceMs
+ */
+export async function endProcess(mark, signal, patienceMs) {
+	const until = performance.now() + patienceMs;
+	/** @type {NodeJS.Signals} */
+	let next = signal;
+	while (isAlive(mark)) {
+		try {
+			process.kill(mark.pid, next);
+		} catch {
+			return; // it went in between
+		}
+		while (isAlive(mark) && performance.now() < until) await sleep(20);
+		if (next === 'SIGKILL') await sleep(20);
+		next = 'SIGKILL';
+	}
+}
+
+/**
+ * Starts a long-running process with its output in a log file. It stands in its own process group, so that Ctrl-C reaches
+ * the launcher alone and the order of stopping is ours; the kernel ends it when the launcher is killed outright.
+ * @param {string} name
+ * @param {string[]} command
+ * @param {{ env: NodeJS.ProcessEnv, log: string, cwd: string, lastSignal?: 'TERM' | 'INT',
+ *   user?: { name: string, group: string } | null, ipc?: boolean }} options
+ * @returns {Running}
+ */
+export function startProcess(name, command, options) {
+	const { env, log, cwd, lastSignal = 'TERM', user = null, ipc = false } = options;
+	const prefix = ['setpriv', '--pdeathsig', lastSignal];
+	if (user) prefix.push(`--reuid=${user.name}`, `--regid=${user.group}`, '--init-groups');
+	const line = existsSync('/usr/bin/setpriv') ? [...prefix, ...command] : command;
+	if (existsSync(log) && statSync(log).size > 10_000_000) renameSync(log, `${log}.1`);
+	const out = openSync(log, 'a', 0o600);
+	const child = spawn(line[0] ?? '', line.slice(1), {
+		cwd,
+		env,
+		detached: true,
+		stdio: ipc ? ['ignore', out, out, 'ipc'] : ['ignore', out, out]
+	});
+	closeSync(out);
+	const gone = new Promise((/** @type {(how: string) => void} */ resolve) => {
+		child.on('error', (error) => resolve(`could not be started: ${error.message}`));
+		child.on('exit', (code, signal) =>
+			resolve(signal ? `was ended by ${signal}` : `ended with code ${code}`)
+		);
+	});
+	return { name, child, log, gone, ...markOf(child.pid ?? 0) };
+}
+
+/**
+ * The first message that a process started with `ipc` sends: where it listens.
+ * @param {Running} running
+ * @returns {Promise<Record<string, unknown>>}
+ */
+export function firstMessage(running) {
+	return Promise.race([
+		new Promise((/** @type {(message: Record<string, unknown>) => void} */ resolve) =>
+			running.child.once('message', (message) => resolve(/** @type {Record<string, unknown>} */ (message)))
+		),
+		running.gone.then((how) => {
+			throw new Error(`${running.name} ${how}: ${lastLines(running.log, 5)}`);
+		})
+	]);
+}
+
+/**
+ * @param {string} file
+ * @param {number} count
+ */
+export function lastLines(file, count) {
+	try {
+		return readFileSync(file, 'utf8').trimEnd().split('\n').slice(-count).join('\n');
+	} catch {
+		return '';
+	}
+}
+
+/**
+ * Whether a TCP port on this address can be listened on now.
+ * @param {string} host
+ * @param {number} port
+ * @returns {Promise<boolean>}
+ */
+export function isPortFree(host, port) {
+	return new Promise((resolve) => {
+		const probe = createServer();
+		probe.once('error', () => resolve(false));
+		probe.listen({ host, port, exclusive: true }, () => probe.close(() => resolve(true)));
+	});
+}
+
+/** @returns {Promise<number>} a loopback port that nothing listens on at this moment */
+export function freePort() {
+	return new Promise((resolve, reject) => {
+		const probe = createServer();
+		probe.once('error', reject);
+		probe.listen({ host: '127.0.0.1', port: 0 }, () => {
+			const address = probe.address();
+			const port = typeof address === 'object' && address ? address.port : 0;
+			probe.close(() => resolve(port));
+		});
+	});
+}
+
+/**
+ * @param {string} host
+ * @param {number} port
+ * @returns {Promise<boolean>}
+ */
+export function accepts(host, port) {
+	return new Promise((resolve) => {
+		const socket = createConnection({ host, port });
+		socket.once('connect', () => {
+			socket.destroy();
+			resolve(true);
+		});
+		socket.once('error', () => resolve(false));
+	});
+}

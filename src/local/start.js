@@ -1,0 +1,197 @@
+import path from 'node:path';
+import { setTimeout as sleep } from 'node:timers/promises';
+import { webSettings } from './environment.js';
+import { endLeftovers, forgetRunState, takeLauncherPlace, writeRunState } from './launcher-state.js';
+import { watchForErrors } from './log-watch.js';
+import { Mendable, localFolder, makeFolder, root, textOf } from './place.js';
+import { checkNode, ensureBuild, ensurePackages, runToEnd } from './prepare.js';
+import { endProcess, isAlive, isPortFree, lastLines, markOf, startProcess } from './processes.js';
+import { startServices } from './services.js';
+
+/**
+ * `npm start`: everything from a fresh clone to a page to sign in on, and the orderly end of all of it on Ctrl-C.
+ * `--services-only` leaves out the application itself, for work on it.
+ *
+ * @typedef {import('./processes.js').Running} Running
+ */
+
+const servicesOnly = process.argv.includes('--services-only');
+const web = webSettings(process.env);
+
+/** @type {Running[]} the application's own processes, in the order of their starting */
+const own = [];
+/** @type {import('./services.js').Services | null} */
+let services = null;
+/** @type {() => void} */
+let giveUpPlace = () => {};
+/** @type {Promise<void> | null} */
+let stopping = null;
+
+/** @type {import('./launcher-state.js').RunState} */
+const state = {
+	launcher: markOf(process.pid),
+	ready: false,
+	address: web.ORIGIN,
+	mailPage: null,
+	processes: {},
+	env: {}
+};
+
+/** @param {Running} one */
+function remember(one) {
+	state.processes[one.name] = { pid: one.pid, started: one.started };
+	writeRunState(state);
+}
+
+/**
+ * A part that all need: when it ends by itself, so does everything.
+ * @param {Running} one
+ */
+function rememberVital(one) {
+	remember(one);
+	void one.gone.then((how) => {
+		if (stopping) return;
+		console.error(
+			`The ${one.name} ${how}; stopping the rest. Its log ${one.log} ends with:\n${lastLines(one.log, 8)}`
+		);
+		void stop(1);
+	});
+}
+
+/**
+ * @param {string} name
+ * @param {string[]} args
+ * @param {Record<string, string>} env
+ */
+function startOwn(name, args, env) {
+	const log = path.join(localFolder, 'log', `${name.replaceAll(' ', '-')}.log`);
+	const one = startProcess(name, [process.execPath, ...args], { env, cwd: root, log });
+	own.push(one);
+	watchForErrors(name, log);
+	return one;
+}
+
+/** @param {number} code */
+function stop(code) {
+	stopping ??= (async () => {
+		console.log('Stopping …');
+		// Whoever uses a service goes before it, and may finish what it is at.
+		for (const one of [...own].reverse()) await endProcess(one, 'SIGTERM', 12_000);
+		await services?.stop();
+		forgetRunState();
+		giveUpPlace();
+		console.log('Stopped.');
+		process.exit(code);
+	})();
+	return stopping;
+}
+
+/** A second Ctrl-C does not wait for requests and jobs; the database still ends in order. */
+function stopAtOnce() {
+	for (const one of own) if (isAlive(one)) process.kill(one.pid, 'SIGKILL');
+}
+
+async function waitForHealth() {
+	const host = ['0.0.0.0', '::'].includes(web.HOST) ? '127.0.0.1' : web.HOST;
+	const at = `http://${host.includes(':') ? `[${host}]` : host}:${web.PORT}/api/v1/health`;
+	let said = 'no answer';
+	for (const until = performance.now() + 60_000; performance.now() < until && !stopping; await sleep(100)) {
+		try {
+			const response = await fetch(at, { signal: AbortSignal.timeout(5_000) });
+			said = `${response.status} ${await response.text()}`;
+			if (response.status === 200) return;
+		} catch (error) {
+			said = textOf(error);
+		}
+	}
+	if (!stopping)
+		throw new Mendable(
+			`The web server did not become healthy in a minute (${said}). Its logs are in ${localFolder}/log.`
+		);
+}
+
+/** @param {import('./cluster.js').Cluster} cluster */
+function startSeed(cluster) {
+	const seed = startOwn('demo seed', ['--import', 'tsx', 'src/seed.ts'], state.env);
+	remember(seed);
+	console.log('The demo laboratory is being filled in; its runs appear over the next minutes.');
+	void seed.gone.then((how) => {
+		own.splice(own.indexOf(seed), 1);
+		if (stopping) return;
+		if (how === 'ended with code 0') {
+			cluster.rememberSeeded();
+			console.log('The demo laboratory is complete.');
+		} else
+			console.error(
+				`The demo seed ${how}; the next start goes on with it. Its log ${seed.log} ends with:\n${lastLines(seed.log, 5)}`
+			);
+	});
+}
+
+async function startApplication() {
+	const env = { ...state.env, ...web };
+	const migrated = await runToEnd([process.execPath, '--import', 'tsx', 'src/migrate.ts'], env);
+	if (migrated.code !== 0)
+		throw new Mendable(`The database could not be migrated:\n${migrated.output.trim()}`);
+	console.log(migrated.output.trim());
+	if (stopping) return;
+	rememberVital(startOwn('worker', ['--import', 'tsx', 'src/worker.ts'], env));
+	rememberVital(startOwn('web server', ['build/index.js'], env));
+	await waitForHealth();
+}
+
+/** @param {boolean} isDemo */
+function greet(isDemo) {
+	const lines = [`Trunnion runs at ${web.ORIGIN}`];
+	if (state.mailPage) lines.push(`Mail that it sends is caught and shown at ${state.mailPage}`);
+	if (isDemo)
+		lines.push(
+			'Demo sign-ins: admin@fellmoor.example, manager@…, engineer@…, builder@…, operator@…; the README has the password and the clients.'
+		);
+	lines.push('Ctrl-C stops everything.');
+	console.log(`\n${lines.join('\n')}\n`);
+}
+
+async function main() {
+	const began = performance.now();
+	checkNode();
+	makeFolder(localFolder);
+	giveUpPlace = takeLauncherPlace();
+	await endLeftovers();
+	if (!servicesOnly && !(await isPortFree(web.HOST, Number(web.PORT))))
+		throw new Mendable(
+			`Port ${web.PORT} on ${web.HOST} is in use by another program. End that, or choose another port: PORT=${Number(web.PORT) + 2} npm start`
+		);
+	await ensurePackages();
+	if (!servicesOnly) await ensureBuild();
+	if (stopping) return;
+	services = await startServices(localFolder, process.env, {
+		pagePort: Number(web.PORT) + 1,
+		onStart: rememberVital
+	});
+	Object.assign(state, { mailPage: services.mailPage, env: { ...services.env, ...web } });
+	writeRunState(state);
+	if (stopping) return;
+	if (!servicesOnly) await startApplication();
+	if (stopping) return;
+	state.ready = true;
+	writeRunState(state);
+	if (servicesOnly)
+		console.log(`Services run; their addresses are in ${localFolder}/run.json. Ctrl-C stops them.`);
+	else greet(services.cluster !== null);
+	console.log(`Started in ${((performance.now() - began) / 1000).toFixed(1)} s.`);
+	if (!servicesOnly && services.cluster && !services.cluster.kept.seeded) startSeed(services.cluster);
+}
+
+for (const signal of /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP']))
+	process.on(signal, () => {
+		if (stopping) stopAtOnce();
+		else void stop(signal === 'SIGINT' ? 130 : 143);
+	});
+// The terminal may go before the launcher does.
+for (const stream of [process.stdout, process.stderr]) stream.on('error', () => {});
+
+main().catch(async (error) => {
+	console.error(error instanceof Mendable ? error.message : error);
+	await stop(1);
+});
