@@ -24,6 +24,7 @@ function selectBuilds(trx: Trx, who: Principal) {
 			'b.number',
 			'b.title',
 			'p.number as parent',
+			'b.parentId',
 			'b.parts',
 			'b.state',
 			'b.version',

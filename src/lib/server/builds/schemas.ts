@@ -29,6 +29,7 @@ export const BuildView = z.object({
 	number: z.string(),
 	title: z.string(),
 	parent: z.string().nullable(),
+	parentId: z.string().nullable(),
 	parts: z.array(Part),
 	state: State,
 	following: z.boolean(),

@@ -1,6 +1,15 @@
 export { listRuns } from './list';
 export { openRun } from './open';
-export { acceptRun, addLogLine, closeRun, flagRun, getRun, listLogLines, runHistory, voidRun } from './record';
+export {
+	acceptRun,
+	addLogLine,
+	closeRun,
+	flagRun,
+	getRun,
+	listLogLines,
+	runHistory,
+	voidRun
+} from './record';
 export {
 	HistoryEntry,
 	LogLineView,

@@ -73,7 +73,10 @@ function toRow(row: Row): RunRow {
 		state: row.state as RunRow['state'],
 		flags: Number(row.flags ?? 0),
 		metrics: figures ?? {},
-		curve: curve?.speed?.length && curve.torque && curve.power ? { speed: curve.speed, torque: curve.torque, power: curve.power } : null
+		curve:
+			curve?.speed?.length && curve.torque && curve.power
+				? { speed: curve.speed, torque: curve.torque, power: curve.power }
+				: null
 	};
 }
 
@@ -84,10 +87,20 @@ export async function listRuns(
 	query: z.output<typeof RunQuery> & { limit: number; cursor?: string | undefined }
 ) {
 	const rows = await reading(deps.pools, who, async (trx) => {
-		let all = selectRows(trx).orderBy('r.startedAt', 'desc').orderBy('r.id').limit(query.limit + 1);
-		if (query.client) all = all.where('r.clientId', '=', (await resolve(trx, 'client', query.client, { field: 'client' })).id);
-		if (query.build) all = all.where('r.buildId', '=', (await resolve(trx, 'build', query.build, { field: 'build' })).id);
-		if (query.cell) all = all.where('r.cellId', '=', (await resolve(trx, 'cell', query.cell, { field: 'cell' })).id);
+		let all = selectRows(trx)
+			.orderBy('r.startedAt', 'desc')
+			.orderBy('r.id')
+			.limit(query.limit + 1);
+		if (query.client)
+			all = all.where(
+				'r.clientId',
+				'=',
+				(await resolve(trx, 'client', query.client, { field: 'client' })).id
+			);
+		if (query.build)
+			all = all.where('r.buildId', '=', (await resolve(trx, 'build', query.build, { field: 'build' })).id);
+		if (query.cell)
+			all = all.where('r.cellId', '=', (await resolve(trx, 'cell', query.cell, { field: 'cell' })).id);
 		if (query.state) all = all.where('r.state', '=', query.state);
 		if (query.flagged)
 			all = all.where((eb) =>
@@ -102,7 +115,9 @@ export async function listRuns(
 			);
 		if (query.cursor) {
 			const [at, id] = readCursor(query.cursor);
-			all = all.where(sql<boolean>`(r.started_at < ${at}::timestamptz or (r.started_at = ${at}::timestamptz and r.id > ${id}::uuid))`);
+			all = all.where(
+				sql<boolean>`(r.started_at < ${at}::timestamptz or (r.started_at = ${at}::timestamptz and r.id > ${id}::uuid))`
+			);
 		}
 		return all.execute();
 	});

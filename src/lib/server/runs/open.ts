@@ -11,15 +11,23 @@ import type { NewRun, RunDetail } from './schemas';
  * Opens a run's record. It records and does not gate: a cell in use by another run, a build not ready or a missing
  * checklist are for people to see, never a reason to lose the record.
  */
-export async function openRun(deps: Deps, who: Principal, input: z.output<typeof NewRun>): Promise<RunDetail> {
+export async function openRun(
+	deps: Deps,
+	who: Principal,
+	input: z.output<typeof NewRun>
+): Promise<RunDetail> {
 	return writing(deps.pools, who, async (trx) => {
 		const named = await clientFor(trx, who, input.client);
 		const build = await resolve(trx, 'build', input.build, { field: 'build', clientId: named });
 		const clientId = build.clientId!;
 		const cell = await resolve(trx, 'cell', input.cell, { field: 'cell' });
 		const batch = await resolve(trx, 'fuel_batch', input.fuelBatch, { field: 'fuelBatch', clientId });
-		const booking = input.booking ? await resolve(trx, 'booking', input.booking, { field: 'booking', clientId }) : null;
-		const limitSet = input.limitSet ? await resolve(trx, 'limit_set', input.limitSet, { field: 'limitSet', clientId }) : null;
+		const booking = input.booking
+			? await resolve(trx, 'booking', input.booking, { field: 'booking', clientId })
+			: null;
+		const limitSet = input.limitSet
+			? await resolve(trx, 'limit_set', input.limitSet, { field: 'limitSet', clientId })
+			: null;
 		const engine = await trx
 			.selectFrom('build as b')
 			.innerJoin('engine as e', 'e.id', 'b.engineId')
@@ -27,7 +35,10 @@ export async function openRun(deps: Deps, who: Principal, input: z.output<typeof
 			.where('b.id', '=', build.id)
 			.executeTakeFirstOrThrow();
 		if (input.correction === 'sae_j1349' && engine.ignition === 'compression')
-			throw wrongField('correction', 'the SAE J1349 form kept here is for spark ignition; use iso_1585 for this engine.');
+			throw wrongField(
+				'correction',
+				'the SAE J1349 form kept here is for spark ignition; use iso_1585 for this engine.'
+			);
 		const number = await nextNumber(trx, clientId, 'R');
 		const { id } = await trx
 			.insertInto('run')
@@ -49,7 +60,13 @@ export async function openRun(deps: Deps, who: Principal, input: z.output<typeof
 			})
 			.returning('id')
 			.executeTakeFirstOrThrow();
-		await recordAudit(trx, who, { action: 'run.open', subject: 'run', subjectId: id, clientId, after: input });
+		await recordAudit(trx, who, {
+			action: 'run.open',
+			subject: 'run',
+			subjectId: id,
+			clientId,
+			after: input
+		});
 		return readRun(trx, id);
 	});
 }

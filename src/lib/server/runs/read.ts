@@ -31,6 +31,7 @@ function selectRun(trx: Trx, id: string) {
 			'r.state',
 			'r.startedAt',
 			'p.displayName as loggedBy',
+			'r.loggedBy as loggedById',
 			'k.number as booking',
 			'l.code as limitSet',
 			'r.correction',
@@ -80,7 +81,13 @@ export async function readRun(trx: Trx, id: string): Promise<RunDetail> {
 }
 
 async function readTraces(trx: Trx, runId: string): Promise<TraceViewIn[]> {
-	const rows = await trx.selectFrom('trace').selectAll().where('runId', '=', runId).orderBy('createdAt').orderBy('id').execute();
+	const rows = await trx
+		.selectFrom('trace')
+		.selectAll()
+		.where('runId', '=', runId)
+		.orderBy('createdAt')
+		.orderBy('id')
+		.execute();
 	const findings = await trx
 		.selectFrom('finding as f')
 		.innerJoin('reduction as d', 'd.id', 'f.reductionId')
@@ -120,7 +127,16 @@ async function readFlags(trx: Trx, runId: string): Promise<RunDetail['flags']> {
 		.selectFrom('flag as f')
 		.leftJoin('reduction as d', 'd.id', 'f.reductionId')
 		.leftJoin('person as p', 'p.id', 'f.raisedBy')
-		.select(['f.id', 'f.rule', 'f.severity', 'f.spans', 'f.worst', 'f.totalS', 'f.message', 'p.displayName as raisedBy'])
+		.select([
+			'f.id',
+			'f.rule',
+			'f.severity',
+			'f.spans',
+			'f.worst',
+			'f.totalS',
+			'f.message',
+			'p.displayName as raisedBy'
+		])
 		.where('f.runId', '=', runId)
 		.where((eb) => eb.or([eb('f.reductionId', 'is', null), eb('d.supersededAt', 'is', null)]))
 		.orderBy(sql`array_position(array['breach','review','note'], f.severity)`)

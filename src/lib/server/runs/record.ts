@@ -24,23 +24,50 @@ export async function getRun(deps: Deps, who: Principal, ref: string): Promise<R
 	return reading(deps.pools, who, async (trx) => readRun(trx, (await resolve(trx, 'run', ref)).id));
 }
 
-export async function closeRun(deps: Deps, who: Principal, ref: string, ifMatch: number | null): Promise<RunDetail> {
+export async function closeRun(
+	deps: Deps,
+	who: Principal,
+	ref: string,
+	ifMatch: number | null
+): Promise<RunDetail> {
 	return writing(deps.pools, who, async (trx) => {
 		const run = await lockRun(trx, ref, ifMatch);
-		if (run.state !== 'open') throw conflict(`Run ${run.number} is ${run.state}; only an open record can be closed.`);
-		await trx.updateTable('run').set({ state: 'closed', endedAt: deps.now(), version: run.version + 1 }).where('id', '=', run.id).execute();
-		await recordAudit(trx, who, { action: 'run.close', subject: 'run', subjectId: run.id, clientId: run.clientId });
+		if (run.state !== 'open')
+			throw conflict(`Run ${run.number} is ${run.state}; only an open record can be closed.`);
+		await trx
+			.updateTable('run')
+			.set({ state: 'closed', endedAt: deps.now(), version: run.version + 1 })
+			.where('id', '=', run.id)
+			.execute();
+		await recordAudit(trx, who, {
+			action: 'run.close',
+			subject: 'run',
+			subjectId: run.id,
+			clientId: run.clientId
+		});
 		return readRun(trx, run.id);
 	});
 }
 
 /** Accepts a run's figures. Nobody accepts a run that they logged themselves. */
-export async function acceptRun(deps: Deps, who: Principal, ref: string, reason: string | undefined, ifMatch: number | null) {
+export async function acceptRun(
+	deps: Deps,
+	who: Principal,
+	ref: string,
+	reason: string | undefined,
+	ifMatch: number | null
+) {
 	return review(deps, who, ref, 'accepted', reason ?? null, ifMatch);
 }
 
 /** Sets a run aside for good, with the reason; its record stays. */
-export async function voidRun(deps: Deps, who: Principal, ref: string, reason: string, ifMatch: number | null) {
+export async function voidRun(
+	deps: Deps,
+	who: Principal,
+	ref: string,
+	reason: string,
+	ifMatch: number | null
+) {
 	return review(deps, who, ref, 'voided', reason, ifMatch);
 }
 
@@ -54,11 +81,19 @@ async function review(
 ): Promise<RunDetail> {
 	return writing(deps.pools, who, async (trx) => {
 		const run = await lockRun(trx, ref, ifMatch);
-		if (run.state === 'voided' || run.state === state) throw conflict(`Run ${run.number} is ${run.state} already.`);
-		if (state === 'accepted' && run.loggedBy === who.personId) throw forbidden('accept a run that you logged yourself');
+		if (run.state === 'voided' || run.state === state)
+			throw conflict(`Run ${run.number} is ${run.state} already.`);
+		if (state === 'accepted' && run.loggedBy === who.personId)
+			throw forbidden('accept a run that you logged yourself');
 		await trx
 			.updateTable('run')
-			.set({ state, reviewedBy: who.personId, reviewedAt: deps.now(), reviewReason, version: run.version + 1 })
+			.set({
+				state,
+				reviewedBy: who.personId,
+				reviewedAt: deps.now(),
+				reviewReason,
+				version: run.version + 1
+			})
 			.where('id', '=', run.id)
 			.execute();
 		await recordAudit(trx, who, {
@@ -81,8 +116,10 @@ export async function flagRun(
 	input: z.output<typeof NewFlag>,
 	ifMatch: number | null
 ): Promise<RunDetail> {
-	if ((input.from === undefined) !== (input.to === undefined)) throw wrongField('to', 'give both from and to, or neither.');
-	if (input.from !== undefined && input.to! < input.from) throw wrongField('to', 'must not come before from.');
+	if ((input.from === undefined) !== (input.to === undefined))
+		throw wrongField('to', 'give both from and to, or neither.');
+	if (input.from !== undefined && input.to! < input.from)
+		throw wrongField('to', 'must not come before from.');
 	return writing(deps.pools, who, async (trx) => {
 		const run = await lockRun(trx, ref, ifMatch);
 		await trx
@@ -97,8 +134,18 @@ export async function flagRun(
 				raisedBy: who.personId
 			})
 			.execute();
-		await trx.updateTable('run').set({ version: run.version + 1 }).where('id', '=', run.id).execute();
-		await recordAudit(trx, who, { action: 'run.flag', subject: 'run', subjectId: run.id, clientId: run.clientId, after: input });
+		await trx
+			.updateTable('run')
+			.set({ version: run.version + 1 })
+			.where('id', '=', run.id)
+			.execute();
+		await recordAudit(trx, who, {
+			action: 'run.flag',
+			subject: 'run',
+			subjectId: run.id,
+			clientId: run.clientId,
+			after: input
+		});
 		await enqueue(
 			trx,
 			'mail.notify',
@@ -119,7 +166,12 @@ export async function addLogLine(
 	return writing(deps.pools, who, async (trx) => {
 		const { id: runId, clientId } = await resolve(trx, 'run', ref);
 		if (input.supersedes) {
-			const earlier = await trx.selectFrom('logLine').select('id').where('id', '=', input.supersedes).where('runId', '=', runId).executeTakeFirst();
+			const earlier = await trx
+				.selectFrom('logLine')
+				.select('id')
+				.where('id', '=', input.supersedes)
+				.where('runId', '=', runId)
+				.executeTakeFirst();
 			if (!earlier) throw wrongField('supersedes', 'there is no such line in this run.');
 		}
 		const row = await trx
@@ -139,13 +191,24 @@ export async function addLogLine(
 	});
 }
 
-export async function listLogLines(deps: Deps, who: Principal, ref: string): Promise<z.input<typeof LogLineView>[]> {
+export async function listLogLines(
+	deps: Deps,
+	who: Principal,
+	ref: string
+): Promise<z.input<typeof LogLineView>[]> {
 	return reading(deps.pools, who, async (trx) => {
 		const { id } = await resolve(trx, 'run', ref);
 		return trx
 			.selectFrom('logLine as l')
 			.innerJoin('person as p', 'p.id', 'l.author')
-			.select(['l.id', 'l.at', 'l.text', 'p.displayName as author', 'l.supersedesId as supersedes', 'l.reason'])
+			.select([
+				'l.id',
+				'l.at',
+				'l.text',
+				'p.displayName as author',
+				'l.supersedesId as supersedes',
+				'l.reason'
+			])
 			.where('l.runId', '=', id)
 			.orderBy('l.at')
 			.orderBy('l.createdAt')
@@ -154,7 +217,11 @@ export async function listLogLines(deps: Deps, who: Principal, ref: string): Pro
 }
 
 /** Who did what to this run, newest first. */
-export async function runHistory(deps: Deps, who: Principal, ref: string): Promise<z.input<typeof HistoryEntry>[]> {
+export async function runHistory(
+	deps: Deps,
+	who: Principal,
+	ref: string
+): Promise<z.input<typeof HistoryEntry>[]> {
 	return reading(deps.pools, who, async (trx) => {
 		const { id } = await resolve(trx, 'run', ref);
 		const rows = await trx

@@ -55,7 +55,12 @@ const TraceView = z.object({
 	sampleRateHz: z.number().nullable(),
 	channels: z.array(z.object({ code: z.string(), header: z.string(), unit: z.string() })).nullable(),
 	findings: z.array(
-		z.object({ code: z.string(), severity: z.enum(['info', 'warning', 'error']), message: z.string(), spans: z.array(Span) })
+		z.object({
+			code: z.string(),
+			severity: z.enum(['info', 'warning', 'error']),
+			message: z.string(),
+			spans: z.array(Span)
+		})
 	),
 	proposal: z.unknown().nullable(),
 	error: z.string().nullable(),
@@ -66,7 +71,9 @@ const FlagView = z.object({
 	rule: z.string(),
 	severity: z.enum(FLAG_SEVERITIES),
 	spans: z.array(Span),
-	worst: z.object({ value: z.number(), limit: z.number(), at: z.number().nullable(), ratio: z.number().nullable() }).nullable(),
+	worst: z
+		.object({ value: z.number(), limit: z.number(), at: z.number().nullable(), ratio: z.number().nullable() })
+		.nullable(),
 	totalS: z.number().nullable(),
 	message: z.string(),
 	raisedBy: z.string().nullable()
@@ -94,6 +101,7 @@ export const RunView = z.object({
 	limitSet: z.string().nullable(),
 	correction: z.enum(CORRECTIONS),
 	net: z.boolean().nullable(),
+	loggedById: z.string(),
 	ambient: z.unknown(),
 	settings: z.unknown(),
 	endedAt: fields.instantOut.nullable(),
@@ -113,7 +121,13 @@ export const RunListItem = z.object({
 	...Head,
 	flags: z.number(),
 	metrics: z.record(z.string(), z.number()),
-	curve: z.object({ speed: z.array(z.number()), torque: z.array(z.number().nullable()), power: z.array(z.number().nullable()) }).nullable()
+	curve: z
+		.object({
+			speed: z.array(z.number()),
+			torque: z.array(z.number().nullable()),
+			power: z.array(z.number().nullable())
+		})
+		.nullable()
 });
 export type RunRow = z.input<typeof RunListItem>;
 
@@ -147,4 +161,9 @@ export const LogLineView = z.object({
 	supersedes: z.string().nullable(),
 	reason: z.string().nullable()
 });
-export const HistoryEntry = z.object({ at: fields.instantOut, actor: z.string().nullable(), action: z.string(), detail: z.string().nullable() });
+export const HistoryEntry = z.object({
+	at: fields.instantOut,
+	actor: z.string().nullable(),
+	action: z.string(),
+	detail: z.string().nullable()
+});

@@ -59,3 +59,5 @@ export async function pageData<T>(event: Pick<RequestEvent, 'locals'>, work: () 
 		error(problem.status, { message: problem.message, requestId: event.locals.requestId });
 	}
 }
+export { refused } from './forms';
+export { labInstant } from './clock';
