@@ -36,7 +36,12 @@ try {
 	switch (positionals.join(' ')) {
 		case 'user add': {
 			if (!values.email || !values.name || !ROLES.includes(values.role as Role)) throw new Error(USAGE);
-			const person = { email: values.email, name: values.name, role: values.role as Role, clientCode: values.client };
+			const person = {
+				email: values.email,
+				name: values.name,
+				role: values.role as Role,
+				clientCode: values.client
+			};
 			await addPerson(deps, { ...person, password: await readPassword() });
 			console.log(`${values.email} may sign in as ${values.role}.`);
 			break;

@@ -1,4 +1,12 @@
-import type { Ambient, CellFacts, ColumnMap, EngineFacts, FuelFacts, RunContext, RunSettings } from '$lib/domain/model';
+import type {
+	Ambient,
+	CellFacts,
+	ColumnMap,
+	EngineFacts,
+	FuelFacts,
+	RunContext,
+	RunSettings
+} from '$lib/domain/model';
 import type { Trx } from '../db';
 import { rulesInForce } from '../limits';
 

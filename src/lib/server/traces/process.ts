@@ -41,7 +41,11 @@ export async function processTrace(deps: Deps, { traceId }: JobData<'trace.proce
 	else await keepRefusal(deps, trace, analysed);
 }
 
-async function keepRefusal(deps: Deps, trace: TraceRow, analysed: Exclude<AnalysedFile, Ready>): Promise<void> {
+async function keepRefusal(
+	deps: Deps,
+	trace: TraceRow,
+	analysed: Exclude<AnalysedFile, Ready>
+): Promise<void> {
 	const proposal = analysed.state === 'needs_map' ? (jsonb(analysed.proposal) as never) : null;
 	await writing(deps.pools, SYSTEM, async (trx) => {
 		await supersede(trx, trace.id, deps.now());
@@ -56,7 +60,8 @@ async function keepRefusal(deps: Deps, trace: TraceRow, analysed: Exclude<Analys
 async function keepFigures(deps: Deps, trace: TraceRow, told: TraceContext, ready: Ready): Promise<void> {
 	const columnar = encodeColumnar(ready.trace);
 	const columnarKey = `clients/${trace.clientId}/columnar/${trace.id}/${createHash('sha256').update(columnar).digest('hex')}`;
-	if ((await deps.store.size(columnarKey)) !== columnar.byteLength) await deps.store.put(columnarKey, columnar);
+	if ((await deps.store.size(columnarKey)) !== columnar.byteLength)
+		await deps.store.put(columnarKey, columnar);
 	await writing(deps.pools, SYSTEM, async (trx) => {
 		await supersede(trx, trace.id, deps.now());
 		const { id: reductionId } = await trx
@@ -94,13 +99,21 @@ async function keepFigures(deps: Deps, trace: TraceRow, told: TraceContext, read
 			subject: 'run',
 			subjectId: trace.runId,
 			clientId: trace.clientId,
-			after: { detail: `${Object.keys(ready.metrics).length} figures, ${ready.flags.length} flags from ${trace.filename}`, reductionId }
+			after: {
+				detail: `${Object.keys(ready.metrics).length} figures, ${ready.flags.length} flags from ${trace.filename}`,
+				reductionId
+			}
 		});
 		if (trace.isPrimary && ready.flags.length)
 			await enqueue(
 				trx,
 				'mail.notify',
-				{ clientId: trace.clientId, event: 'run.flagged', subjectId: trace.runId, revision: await timesReduced(trx, trace.id) },
+				{
+					clientId: trace.clientId,
+					event: 'run.flagged',
+					subjectId: trace.runId,
+					revision: await timesReduced(trx, trace.id)
+				},
 				`run.flagged:${reductionId}`
 			);
 	});
@@ -116,7 +129,8 @@ async function supersede(trx: Trx, traceId: string, now: Date): Promise<void> {
 		.where('supersededAt', 'is', null)
 		.returning('id')
 		.execute();
-	for (const { id } of old) await trx.updateTable('metric').set({ isCurrent: false }).where('reductionId', '=', id).execute();
+	for (const { id } of old)
+		await trx.updateTable('metric').set({ isCurrent: false }).where('reductionId', '=', id).execute();
 }
 
 async function timesReduced(trx: Trx, traceId: string): Promise<number> {

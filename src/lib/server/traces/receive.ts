@@ -30,10 +30,19 @@ interface Upload {
  * Keeps an original untouched under the hash of its bytes, then records it and asks for its figures.
  * Check, store, record: nothing streams inside a transaction, and a broken upload leaves no record.
  */
-export async function receiveTrace(deps: Deps, who: Principal, runRef: string, upload: Upload): Promise<Received> {
+export async function receiveTrace(
+	deps: Deps,
+	who: Principal,
+	runRef: string,
+	upload: Upload
+): Promise<Received> {
 	const { id: runId, clientId } = await reading(deps.pools, who, async (trx) => {
 		const found = await resolve(trx, 'run', runRef);
-		const run = await trx.selectFrom('run').select(['number', 'state']).where('id', '=', found.id).executeTakeFirstOrThrow();
+		const run = await trx
+			.selectFrom('run')
+			.select(['number', 'state'])
+			.where('id', '=', found.id)
+			.executeTakeFirstOrThrow();
 		if (run.state === 'accepted' || run.state === 'voided')
 			throw conflict(`Run ${run.number} is ${run.state}: its record takes no more traces. Open a new run.`);
 		return { ...found, clientId: found.clientId! };
@@ -45,7 +54,8 @@ export async function receiveTrace(deps: Deps, who: Principal, runRef: string, u
 		const spooled = await spool(upload.body, path.join(folder, 'original'), limit);
 		const key = `clients/${clientId}/originals/${spooled.sha256.toString('hex')}`;
 		// The same bytes may come again under another run: only the object is shared.
-		if ((await deps.store.size(key)) !== spooled.sizeBytes) await deps.store.put(key, createReadStream(spooled.file));
+		if ((await deps.store.size(key)) !== spooled.sizeBytes)
+			await deps.store.put(key, createReadStream(spooled.file));
 		return await record(deps, who, { runId, clientId, key, spooled, upload });
 	} finally {
 		await rm(folder, { recursive: true, force: true });
@@ -61,7 +71,8 @@ interface Spooled {
 async function spool(body: Upload['body'], file: string, limit: number): Promise<Spooled> {
 	const hash = createHash('sha256');
 	let sizeBytes = 0;
-	const source = body === null ? Readable.from([]) : body instanceof Readable ? body : Readable.fromWeb(body as never);
+	const source =
+		body === null ? Readable.from([]) : body instanceof Readable ? body : Readable.fromWeb(body as never);
 	await pipeline(
 		source,
 		async function* (chunks: AsyncIterable<Buffer>) {
@@ -78,7 +89,11 @@ async function spool(body: Upload['body'], file: string, limit: number): Promise
 }
 
 const tooLarge = (limit: number) =>
-	new Problem(413, 'Too large', `A trace may have ${Math.floor(limit / 1024 / 1024)} MiB at most. Split the log, or export fewer channels.`);
+	new Problem(
+		413,
+		'Too large',
+		`A trace may have ${Math.floor(limit / 1024 / 1024)} MiB at most. Split the log, or export fewer channels.`
+	);
 
 async function record(
 	deps: Deps,
@@ -89,7 +104,12 @@ async function record(
 	return writing(deps.pools, who, async (trx) => {
 		// Two uploads at once must not both become the primary trace.
 		await trx.selectFrom('run').select('id').where('id', '=', runId).forUpdate().executeTakeFirstOrThrow();
-		const primary = await trx.selectFrom('trace').select('id').where('runId', '=', runId).where('isPrimary', '=', true).executeTakeFirst();
+		const primary = await trx
+			.selectFrom('trace')
+			.select('id')
+			.where('runId', '=', runId)
+			.where('isPrimary', '=', true)
+			.executeTakeFirst();
 		const filename = safeName(upload.filename);
 		const { id } = await trx
 			.insertInto('trace')
@@ -122,6 +142,9 @@ async function record(
 /** What is left of a file's name: its last part, without control characters or marks that turn text around. */
 function safeName(given: string | null): string {
 	const last = (given ?? '').split(/[\\/]/).pop() ?? '';
-	const clean = last.toWellFormed().replace(/[\p{Cc}\p{Cf}]/gu, '').trim();
+	const clean = last
+		.toWellFormed()
+		.replace(/[\p{Cc}\p{Cf}]/gu, '')
+		.trim();
 	return [...clean].slice(0, 120).join('') || 'trace';
 }

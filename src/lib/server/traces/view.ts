@@ -19,25 +19,43 @@ export const WindowQuery = z.object({
 async function findTrace(deps: Deps, who: Principal, runRef: string, traceId: string | undefined) {
 	return reading(deps.pools, who, async (trx) => {
 		const { id: runId } = await resolve(trx, 'run', runRef);
-		const traces = trx.selectFrom('trace').select(['id', 'state', 'columnarKey', 'objectKey', 'filename', 'sizeBytes']).where('runId', '=', runId);
-		const trace = await (traceId ? traces.where('id', '=', traceId) : traces.where('isPrimary', '=', true)).executeTakeFirst();
+		const traces = trx
+			.selectFrom('trace')
+			.select(['id', 'state', 'columnarKey', 'objectKey', 'filename', 'sizeBytes'])
+			.where('runId', '=', runId);
+		const trace = await (
+			traceId ? traces.where('id', '=', traceId) : traces.where('isPrimary', '=', true)
+		).executeTakeFirst();
 		if (!trace) throw notFound(traceId ? 'This trace' : 'A trace of this run');
 		return trace;
 	});
 }
 
 /** A stretch of the trace, min and max per bucket, read in pieces from one stored object: no spike is ever lost to the scale. */
-export async function readWindow(deps: Deps, who: Principal, runRef: string, query: z.output<typeof WindowQuery>): Promise<TraceWindow> {
+export async function readWindow(
+	deps: Deps,
+	who: Principal,
+	runRef: string,
+	query: z.output<typeof WindowQuery>
+): Promise<TraceWindow> {
 	const trace = await findTrace(deps, who, runRef, query.trace);
 	if (!trace.columnarKey || trace.state !== 'ready')
-		throw new Problem(409, 'Not ready', `The trace ${trace.filename} is ${trace.state}; it has no chart yet.`);
+		throw new Problem(
+			409,
+			'Not ready',
+			`The trace ${trace.filename} is ${trace.state}; it has no chart yet.`
+		);
 	const key = trace.columnarKey;
 	const columnar = await openColumnar((from, length) => deps.store.readRange(key, from, length));
 	const known = new Set(columnar.channels.map((channel) => channel.code));
 	const wanted = query.channels?.split(',').filter(Boolean) ?? [...known].slice(0, 4);
 	const unknown = wanted.filter((channel) => !known.has(channel));
-	if (unknown.length) throw badRequest(`channels: this trace has no ${unknown.slice(0, 5).join(', ')}. It has ${[...known].slice(0, 40).join(', ')}.`);
-	if (query.from !== undefined && query.to !== undefined && query.to <= query.from) throw badRequest('to: must come after from.');
+	if (unknown.length)
+		throw badRequest(
+			`channels: this trace has no ${unknown.slice(0, 5).join(', ')}. It has ${[...known].slice(0, 40).join(', ')}.`
+		);
+	if (query.from !== undefined && query.to !== undefined && query.to <= query.from)
+		throw badRequest('to: must come after from.');
 	return columnar.window({ channels: wanted, from: query.from, to: query.to, points: query.points });
 }
 
@@ -64,7 +82,12 @@ export async function readCurve(deps: Deps, who: Principal, runRef: string): Pro
 }
 
 /** The untouched original, as a download that no browser will run. */
-export async function downloadOriginal(deps: Deps, who: Principal, runRef: string, traceId: string): Promise<Response> {
+export async function downloadOriginal(
+	deps: Deps,
+	who: Principal,
+	runRef: string,
+	traceId: string
+): Promise<Response> {
 	const id = z.uuid().safeParse(traceId).data;
 	if (!id) throw notFound('This trace');
 	const trace = await findTrace(deps, who, runRef, id);

@@ -12,8 +12,16 @@ const GROUPS = ['build', 'engine', 'fuel', 'cell', 'month'] as const;
 export const TrendQuery = z.object({
 	metric: z.string().regex(/^[a-z][a-z0-9_]{1,60}$/, 'name a metric, e.g. bte_max'),
 	groupBy: z.enum(GROUPS).default('build'),
-	from: z.union([fields.instant, z.iso.date().transform((day) => new Date(`${day}T00:00:00Z`))], { error: 'give a date like 2026-03-01' }).optional(),
-	to: z.union([fields.instant, z.iso.date().transform((day) => new Date(`${day}T23:59:59.999Z`))], { error: 'give a date like 2026-03-31' }).optional(),
+	from: z
+		.union([fields.instant, z.iso.date().transform((day) => new Date(`${day}T00:00:00Z`))], {
+			error: 'give a date like 2026-03-01'
+		})
+		.optional(),
+	to: z
+		.union([fields.instant, z.iso.date().transform((day) => new Date(`${day}T23:59:59.999Z`))], {
+			error: 'give a date like 2026-03-31'
+		})
+		.optional(),
 	client: fields.ref.optional(),
 	engine: fields.ref.optional(),
 	build: fields.ref.optional(),
@@ -36,7 +44,13 @@ export const TrendView = z.object({
 		})
 	),
 	points: z.array(
-		z.object({ run: z.string(), group: z.string(), at: fields.instantOut, value: z.number(), u: z.number().nullable() })
+		z.object({
+			run: z.string(),
+			group: z.string(),
+			at: fields.instantOut,
+			value: z.number(),
+			u: z.number().nullable()
+		})
 	),
 	pointsTotal: z.number()
 });
@@ -44,7 +58,10 @@ export const TrendView = z.object({
 const MOST_POINTS = 5000;
 
 /** What a run is grouped by: a key that tells groups apart, its label, and a second line. */
-const GROUP_SQL: Record<(typeof GROUPS)[number], { id: RawBuilder<string>; label: RawBuilder<string>; title: RawBuilder<string | null> }> = {
+const GROUP_SQL: Record<
+	(typeof GROUPS)[number],
+	{ id: RawBuilder<string>; label: RawBuilder<string>; title: RawBuilder<string | null> }
+> = {
 	build: { id: sql`b.id::text`, label: sql`b.number`, title: sql`b.title` },
 	engine: { id: sql`e.id::text`, label: sql`e.code`, title: sql`e.name` },
 	fuel: { id: sql`f.id::text`, label: sql`f.code`, title: sql`f.name` },
@@ -100,7 +117,11 @@ interface GroupRow {
 }
 
 /** A metric over groups of runs, with spread and the runs behind it. The interval is of the mean, by Student's t at n − 1. */
-export async function readTrend(deps: Deps, who: Principal, query: z.output<typeof TrendQuery>): Promise<z.input<typeof TrendView>> {
+export async function readTrend(
+	deps: Deps,
+	who: Principal,
+	query: z.output<typeof TrendQuery>
+): Promise<z.input<typeof TrendView>> {
 	const group = GROUP_SQL[query.groupBy];
 	return reading(deps.pools, who, async (trx) => {
 		const where = await filtersOf(trx, query);
@@ -109,7 +130,13 @@ export async function readTrend(deps: Deps, who: Principal, query: z.output<type
 				count(*) as n, avg(m.value) as mean, stddev_samp(m.value) as sd, min(m.unit) as unit, max(r.started_at) as last
 			from ${FROM} where ${where} group by 1, 2, 4 order by 2, 3 limit 500`.execute(trx);
 		const keys = labelsOf(groups);
-		const { rows: points } = await sql<{ run: string; groupId: string; at: Date; value: number; u: number | null }>`
+		const { rows: points } = await sql<{
+			run: string;
+			groupId: string;
+			at: Date;
+			value: number;
+			u: number | null;
+		}>`
 			select r.number as run, ${group.id} as group_id, r.started_at as at, m.value, m.u
 			from ${FROM} where ${where} order by r.started_at desc, r.id limit ${MOST_POINTS}`.execute(trx);
 		return {
@@ -141,7 +168,9 @@ function intervalOf({ n, mean, sd }: GroupRow): [number, number] | null {
 function labelsOf(groups: GroupRow[]): Map<string, string> {
 	const times = new Map<string, number>();
 	for (const { label } of groups) times.set(label, (times.get(label) ?? 0) + 1);
-	return new Map(groups.map(({ id, label, client }) => [id, times.get(label)! > 1 ? `${client} ${label}` : label]));
+	return new Map(
+		groups.map(({ id, label, client }) => [id, times.get(label)! > 1 ? `${client} ${label}` : label])
+	);
 }
 
 /** Metric codes that this person's runs have, for the chooser. */

@@ -37,7 +37,10 @@ export interface RunningWorker {
 /** Runs jobs until told to stop. Several may run against one queue, on one machine or many. */
 export async function startWorker(deps: Deps, concurrency = 2): Promise<RunningWorker> {
 	const handlers: Handlers = { 'trace.process': (data) => processTrace(deps, data), ...mailHandlers(deps) };
-	const life = await Life.begin(deps.pools.queuePool, `${hostname()}-${process.pid}-${randomUUID().slice(0, 8)}`);
+	const life = await Life.begin(
+		deps.pools.queuePool,
+		`${hostname()}-${process.pid}-${randomUUID().slice(0, 8)}`
+	);
 	const events: WorkerEvents = new EventEmitter();
 	// Before it may lock a job, so that nobody can take it for dead.
 	events.on('worker:create', ({ worker }) => void life.use(worker.workerId));
@@ -51,7 +54,10 @@ export async function startWorker(deps: Deps, concurrency = 2): Promise<RunningW
 		events
 	});
 	events.on('job:error', ({ job, error }) =>
-		log.warn({ task: job.task_identifier, jobId: job.id, attempt: job.attempts, err: error }, 'job failed; it will be tried again')
+		log.warn(
+			{ task: job.task_identifier, jobId: job.id, attempt: job.attempts, err: error },
+			'job failed; it will be tried again'
+		)
 	);
 	events.on('job:failed', ({ job, error }) =>
 		log.error({ task: job.task_identifier, jobId: job.id, err: error }, 'job given up after its last try')
