@@ -42,6 +42,10 @@ export async function up(db: Kysely<any>): Promise<void> {
 	await sql`create index booking_client_from on booking (client_id, lower(during) desc)`.execute(db);
 	await sql`create index booking_build_id on booking (client_id, build_id)`.execute(db);
 	await sql`create index booking_from on booking (lower(during) desc)`.execute(db);
+	// One open request at a time asks to move a slot.
+	await sql`create unique index booking_one_open_move on booking (replaces_id) where state = 'requested'`.execute(
+		db
+	);
 
 	await sql`create table occupancy (
 		id uuid primary key default gen_random_uuid(),
@@ -83,6 +87,9 @@ export async function up(db: Kysely<any>): Promise<void> {
 	await sql`create policy own on occupancy for select to trunnion_client using (client_id = (select acting_client()))`.execute(
 		db
 	);
+	// A closure is the lab's own and tells nothing of a rival; its title stays with the staff.
+	await sql`create policy closed on occupancy for select to trunnion_client
+		using (kind = 'closure' and (select acting_client()) is not null)`.execute(db);
 	await sql`create policy own_end on occupancy for delete to trunnion_client using (client_id = (select acting_client()))`.execute(
 		db
 	);
