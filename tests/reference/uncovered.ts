@@ -42,15 +42,15 @@ export const UNCOVERED: readonly Uncovered[] = [
 		reason: 'another ratio of molar masses (0.621945), 1.5e-5 from that of 40 CFR 1065.1005'
 	},
 	{ match: /^ashrae-ex1|^isa-|^cipm-/, reason: 'wet bulb, altitude and real-gas density are not computed' },
-	{ match: /^gum-H(1-(?!k99)|2)|^prop-/, reason: 'propagation of uncertainty: not part of this stage' },
+	{ match: /^gum-H(1-(?!k99)|2)|^prop-/, reason: 'propagation of uncertainty: not computed yet' },
 	{
 		match: /^strd-(Michelso-r1|Lottery|Lew|Norris-(se|R2|F$|SSR)|Pontius|SiRstv|AtmWtAg)/,
 		reason:
 			'autocorrelation, regression inference and analysis of variance are not computed; the data of three sets are not in the file'
 	},
-	{ match: /^ehandbook/, reason: 'control charts and two-sample tests: not part of this stage' },
-	{ match: /^brett/, reason: 'lambda from exhaust gas: not part of this stage' },
-	{ match: /^cycle-|^imo-/, reason: 'weighted cycles: not part of this stage' },
+	{ match: /^ehandbook/, reason: 'control charts and two-sample tests: not computed yet' },
+	{ match: /^brett/, reason: 'lambda from exhaust gas: not computed yet' },
+	{ match: /^cycle-|^imo-/, reason: 'weighted cycles: not computed yet' },
 	{ match: /^data-/, reason: 'data sets that are not in the file' },
 	{ match: /^perf-v8-torque$/, reason: 'a load on an arm: torque is measured here' }
 ];

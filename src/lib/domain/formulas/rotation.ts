@@ -1,5 +1,5 @@
 import type { CellFacts, EngineFacts } from '../model';
-import { fitAt } from '../statistics/local-fit';
+import { quadraticAt } from '../statistics/local-fit';
 
 export interface CountedInertia {
 	inertiaKgM2: number;
@@ -55,8 +55,8 @@ export function angularAccelerationRadS2(
 		while (first < i && timeS[first]! < timeS[i]! - windowS / 2) first++;
 		end = Math.max(end, i);
 		while (end < timeS.length && timeS[end]! <= timeS[i]! + windowS / 2) end++;
-		const fit = fitAt(timeS, speedRpm, first, end, timeS[i]!, 2, 5);
-		slope[i] = fit ? (fit[1]! * 2 * Math.PI) / 60 : NaN;
+		const fit = quadraticAt(timeS, speedRpm, first, end, timeS[i]!, 5);
+		slope[i] = fit ? (fit[1] * 2 * Math.PI) / 60 : NaN;
 	}
 	return slope;
 }

@@ -77,3 +77,47 @@ function leastSquares(columns: Float64Array[], y: readonly number[]): number[] |
 	}
 	return c;
 }
+
+/**
+ * Value and slope at a point of the quadratic fitted by least squares to the samples about it: `fitAt` of degree 2 without its storage, for
+ * one fit per sample. Moments are taken about x0 and the sample there and scaled to ±1, so normal equations are safe.
+ *
+ * @param from @param to half-open index range @param least fewest known samples, at least 3
+ * @returns [value, slope], or null where there are too few samples or too few different x
+ */
+export function quadraticAt(
+	x: ArrayLike<number>,
+	y: ArrayLike<number>,
+	from: number,
+	to: number,
+	x0: number,
+	least: number
+): readonly [value: number, slope: number] | null {
+	const reach = Math.max(Math.abs(x[from]! - x0), Math.abs(x[to - 1]! - x0));
+	if (!(reach > 0)) return null;
+	let base = NaN;
+	let [n, s1, s2, s3, s4, b0, b1, b2] = [0, 0, 0, 0, 0, 0, 0, 0];
+	for (let i = from; i < to; i++) {
+		const v = y[i]!;
+		const u = (x[i]! - x0) / reach;
+		if (!Number.isFinite(v + u)) continue;
+		if (n === 0) base = v;
+		const w = v - base;
+		const uu = u * u;
+		n++;
+		s1 += u;
+		s2 += uu;
+		s3 += uu * u;
+		s4 += uu * uu;
+		b0 += w;
+		b1 += w * u;
+		b2 += w * uu;
+	}
+	if (n < Math.max(3, least)) return null;
+	const [m00, m01, m02] = [s2 * s4 - s3 * s3, s2 * s3 - s1 * s4, s1 * s3 - s2 * s2];
+	const determinant = n * m00 + s1 * m01 + s2 * m02;
+	if (!(determinant > 1e-12 * n * s2 * s4)) return null;
+	const value = (b0 * m00 + b1 * m01 + b2 * m02) / determinant;
+	const slope = (b0 * m01 + b1 * (n * s4 - s2 * s2) + b2 * (s1 * s2 - n * s3)) / determinant;
+	return [base + value, slope / reach];
+}
