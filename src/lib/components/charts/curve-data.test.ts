@@ -1,0 +1,19 @@
+import { expect, it } from 'vitest';
+import { curveTable } from './curve-data';
+
+const CURVE = {
+	speed: [3000, null, 2000],
+	power: [57, 1, 31],
+	bte: [0.33, 0.2, null],
+	torque: [null, null, null]
+};
+
+it('sorts by speed, leaves out rows without one and prints fractions in %', () => {
+	const table = curveTable(CURVE, ['power', 'torque', 'bte']);
+	expect(table.speed).toEqual([2000, 3000]);
+	expect(table.columns.power).toEqual([31, 57]);
+	expect(table.columns.bte).toEqual([null, 33]);
+});
+it('has no column for what was not measured', () => {
+	expect(Object.keys(curveTable(CURVE, ['power', 'torque', 'lambda_flow']).columns)).toEqual(['power']);
+});

@@ -1,0 +1,32 @@
+import { labelOf } from '$lib/domain/display/labels';
+import type { Curve } from '$lib/domain/model';
+
+/** Codes of a reduced curve that its chart knows how to place, top pane first. */
+export const UPPER = ['power', 'torque'] as const;
+export const LOWER = ['bte'] as const;
+
+export interface CurveTable {
+	/** Speeds in rising order. */
+	speed: number[];
+	/** By code, as printed: fractions in %. */
+	columns: Record<string, (number | null)[]>;
+}
+
+/** The curve as a chart takes it: rows without a speed left out, speeds rising, efficiencies in %. */
+export function curveTable(curve: Curve, codes: readonly string[]): CurveTable {
+	const order = (curve.speed ?? [])
+		.map((rpm, at) => ({ rpm, at }))
+		.filter((row): row is { rpm: number; at: number } => row.rpm !== null)
+		.sort((a, b) => a.rpm - b.rpm);
+	const columns: CurveTable['columns'] = {};
+	for (const code of codes) {
+		const values = curve[code];
+		if (!values?.some((value) => value !== null)) continue;
+		const scale = labelOf(code).percent ? 100 : 1;
+		columns[code] = order.map(({ at }) => {
+			const value = values[at] ?? null;
+			return value === null ? null : value * scale;
+		});
+	}
+	return { speed: order.map(({ rpm }) => rpm), columns };
+}
