@@ -1,7 +1,7 @@
 import { DIMENSIONS, type Dimension } from '../units/dimensions';
 
 /** Where on the engine a temperature or pressure is taken. */
-export type Station = 'ambient' | 'inlet' | 'boost' | 'manifold' | 'exhaust';
+type Station = 'ambient' | 'inlet' | 'boost' | 'manifold' | 'exhaust';
 
 export interface Channel {
 	code: string;

@@ -17,6 +17,6 @@ export const R_DRY = 287.05;
 export const R_VAPOUR = 461.5;
 
 /** 0 °C, K. */
-export const ZERO_CELSIUS_K = 273.15;
+const ZERO_CELSIUS_K = 273.15;
 
 export const kelvin = (celsius: number) => celsius + ZERO_CELSIUS_K;

@@ -3,7 +3,7 @@ import { DIMENSIONS, type Dimension } from './dimensions';
 import { UNIT_ROWS, type UnitRow } from './table';
 
 /** How a pressure's unit says that it is measured: from a perfect vacuum, or from the air outside. */
-export type PressureReference = 'absolute' | 'gauge';
+type PressureReference = 'absolute' | 'gauge';
 
 export interface Unit {
 	/** Canonical label, e.g. `lbf·ft`. */
