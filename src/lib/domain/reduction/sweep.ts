@@ -14,6 +14,8 @@ import { toCurve, type Reduced } from './reduced';
 const DEFAULTS = { speedBinRpm: 100, minSamplesPerBin: 3, fullLoadShare: 0.95 };
 /** Width of the mean that frees the speed of noise before samples are sorted into bins, s. */
 const SORTING_S = 0.2;
+/** Conditions of the room do not follow the engine's speed: one mean of the ramp is surer than one of each bin. */
+const ROOM = ['barometer', 'ambient_temp', 'humidity', 'vapour_pressure'];
 /** A second direction counts as the main one only where it carries this much more load. */
 const CLEARLY_MORE = 1.25;
 
@@ -28,6 +30,17 @@ function meanPower(speed: Float64Array, torque: Float64Array, ramps: readonly Ra
 			n++;
 		}
 	return n > 0 ? sum / n : -Infinity;
+}
+
+function meanOver(values: Float64Array, rows: readonly number[]): number {
+	let sum = 0;
+	let n = 0;
+	for (const row of rows)
+		if (!Number.isNaN(values[row]!)) {
+			sum += values[row]!;
+			n++;
+		}
+	return n > 0 ? sum / n : NaN;
 }
 
 const width = (ramp: Ramp) => ramp.speeds[1] - ramp.speeds[0];
@@ -155,6 +168,10 @@ export function reduceSweep(
 	const binned = binBySpeed(full, sorting, rows, settings.speedBinRpm, settings.minSamplesPerBin);
 	const count = binned.n.length;
 	const curve = new Map(binned.columns);
+	for (const code of ROOM) {
+		const values = curve.get(code);
+		if (values) curve.set(code, new Float64Array(count).fill(meanOver(full.get(code)!, rows)));
+	}
 	for (const [code, values] of derive(curve, count, context)) curve.set(code, values);
 	const correcting = correct(curve, count, context);
 	for (const [code, values] of correcting.columns) curve.set(code, values);
