@@ -17,7 +17,7 @@ function install(packages, why) {
 	const command = `apt-get install --no-install-recommends ${names}`;
 	if (!isRoot || !existsSync('/usr/bin/apt-get'))
 		throw new Mendable(`${why} Install it first, as root: ${command}`);
-	console.log(`Installing ${names} from Debian …`);
+	console.error(`Installing ${names} from Debian …`);
 	const env = { ...process.env, DEBIAN_FRONTEND: 'noninteractive' };
 	/** @param {string[]} args */
 	const apt = (args) =>
@@ -86,7 +86,7 @@ export function chromium() {
 
 /**
  * Who runs the database server: PostgreSQL refuses to run as root.
- * @returns {{ name: string, group: string, uid: number, gid: number } | null} null: whoever runs this
+ * @returns {{ uid: number, gid: number } | null} null: whoever runs this
  */
 export function serverUser() {
 	if (!isRoot) return null;
@@ -98,5 +98,5 @@ export function serverUser() {
 		throw new Mendable(
 			'The user "postgres" is missing; reinstall the package postgresql-common, or start as a user other than root.'
 		);
-	return { name: 'postgres', group: gid, uid: Number(uid), gid: Number(gid) };
+	return { uid: Number(uid), gid: Number(gid) };
 }

@@ -70,7 +70,7 @@ export async function endLeftovers() {
 	const last = left.filter(([name]) => name === 'database');
 	const first = left.filter(([name]) => name !== 'database');
 	if (left.length)
-		console.log(`Ending what a killed start left behind: ${left.map(([name]) => name).join(', ')}.`);
+		console.error(`Ending what a killed start left behind: ${left.map(([name]) => name).join(', ')}.`);
 	await Promise.all(first.map(([, mark]) => endProcess(mark, 'SIGTERM', 5_000)));
 	await Promise.all(last.map(([, mark]) => endProcess(mark, 'SIGINT', 15_000)));
 }

@@ -54,7 +54,7 @@ export async function ensurePackages() {
 		writeFileSync(mark, lockHash);
 		return;
 	}
-	console.log('Installing packages …');
+	console.error('Installing packages …');
 	rmSync(mark, { force: true });
 	const { code, output } = await runToEnd([
 		'npm',
@@ -127,7 +127,7 @@ export async function ensureBuild() {
 	const mark = path.join(root, 'build', '.sources.sha256');
 	const wanted = sourceHash();
 	if (existsSync(path.join(root, 'build', 'index.js')) && readText(mark) === wanted) return false;
-	console.log('Building the web server …');
+	console.error('Building the web server …');
 	rmSync(mark, { force: true });
 	const { code, output } = await runToEnd([program('vite'), 'build', '--logLevel', 'warn'], {
 		...process.env,

@@ -63,13 +63,13 @@ export async function endProcess(mark, signal, patienceMs) {
  * @param {string} name
  * @param {string[]} command
  * @param {{ env: NodeJS.ProcessEnv, log: string, cwd: string, lastSignal?: 'TERM' | 'INT',
- *   user?: { name: string, group: string } | null, ipc?: boolean }} options
+ *   user?: { uid: number, gid: number } | null, ipc?: boolean }} options
  * @returns {Running}
  */
 export function startProcess(name, command, options) {
 	const { env, log, cwd, lastSignal = 'TERM', user = null, ipc = false } = options;
 	const prefix = ['setpriv', '--pdeathsig', lastSignal];
-	if (user) prefix.push(`--reuid=${user.name}`, `--regid=${user.group}`, '--init-groups');
+	if (user) prefix.push(`--reuid=${user.uid}`, `--regid=${user.gid}`, '--init-groups');
 	const line = existsSync('/usr/bin/setpriv') ? [...prefix, ...command] : command;
 	if (existsSync(log) && statSync(log).size > 10_000_000) renameSync(log, `${log}.1`);
 	const out = openSync(log, 'a', 0o600);

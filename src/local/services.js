@@ -1,5 +1,4 @@
 import { randomBytes } from 'node:crypto';
-import { existsSync } from 'node:fs';
 import path from 'node:path';
 import { startCluster } from './cluster.js';
 import {
@@ -17,75 +16,77 @@ import { endProcess, firstMessage, isPortFree, startProcess } from './processes.
 /**
  * The services that the application needs and this machine does not have: each is started only if nothing is set for it.
  * @typedef {import('./processes.js').Running} Running
- * @typedef {{ cluster: import('./cluster.js').Cluster | null, mailPage: string | null, env: Record<string, string>,
- *   running: Running[], stop: () => Promise<void> }} Services
+ * @typedef {{ cluster: import('./cluster.js').Cluster | null, mailPage: string | null, env: Record<string, string> }} Services
+ * @typedef {{ home: string, given: NodeJS.ProcessEnv, throwAway: boolean, pagePort: number,
+ *   onStart: (running: Running) => void }} Wishes `home`: where everything is kept; `onStart` hears of each process at once,
+ *   so that a start that breaks off half-way leaves none behind
  */
 
+const DATABASE = 'database';
+
 /**
- * @param {string} home where everything is kept
- * @param {NodeJS.ProcessEnv} given
- * @param {{ throwAway?: boolean, pagePort?: number, onStart?: (running: Running) => void }} [options]
+ * @param {Wishes} wishes
  * @returns {Promise<Services>}
  */
-export async function startServices(home, given, { throwAway = false, pagePort = 0, onStart } = {}) {
-	const logs = path.join(home, 'log');
-	makeFolder(home);
-	makeFolder(logs);
+export async function startServices(wishes) {
+	makeFolder(wishes.home);
+	makeFolder(path.join(wishes.home, 'log'));
 	/** @type {Services} */
 	const services = {
 		cluster: null,
 		mailPage: null,
-		env: { ...surroundings(given), ...otherSettings(given) },
-		running: [],
-		stop: async () => {
-			await Promise.all(services.running.map((one) => endProcess(one, 'SIGTERM', 3_000)));
-			await services.cluster?.stop();
-		}
+		env: { ...surroundings(wishes.given), ...otherSettings(wishes.given) }
 	};
-	const started = (/** @type {Running} */ one) => {
-		if (one.name !== 'database') services.running.push(one);
-		onStart?.(one);
-	};
-	try {
-		await Promise.all([
-			startDatabase(services, home, given, throwAway, started),
-			startStore(services, home, given, throwAway, started),
-			startMail(services, home, given, pagePort, started)
-		]);
-	} catch (error) {
-		await services.stop();
-		throw error;
-	}
+	const outcomes = await Promise.allSettled([
+		startDatabase(services, wishes),
+		startStore(services, wishes),
+		startMail(services, wishes)
+	]);
+	for (const outcome of outcomes) if (outcome.status === 'rejected') throw outcome.reason;
 	return services;
 }
 
-/** @typedef {(running: Running) => void} Started */
+/**
+ * Ends services: the database last, since the others may still be at work for someone who uses it.
+ * @param {Running[]} running
+ */
+export async function stopServices(running) {
+	const [databases, others] = [true, false].map((is) =>
+		running.filter((one) => (one.name === DATABASE) === is)
+	);
+	await Promise.all((others ?? []).map((one) => endProcess(one, 'SIGTERM', 3_000)));
+	await Promise.all((databases ?? []).map((one) => endProcess(one, 'SIGINT', 20_000)));
+}
+
+/**
+ * @param {string} home
+ * @param {string} name
+ */
+const logOf = (home, name) => path.join(home, 'log', `${name}.log`);
 
 /**
  * @param {Services} services
- * @param {string} home
- * @param {NodeJS.ProcessEnv} given
- * @param {boolean} throwAway
- * @param {Started} started
+ * @param {Wishes} wishes
  */
-async function startDatabase(services, home, given, throwAway, started) {
+async function startDatabase(services, { home, given, throwAway, onStart }) {
 	if (hasOwnDatabase(given)) {
 		Object.assign(services.env, databaseSettings(given));
 		return;
 	}
-	services.cluster = await startCluster(home, { log: path.join(home, 'log', 'database.log'), throwAway });
-	started(services.cluster.running);
+	services.cluster = await startCluster(home, {
+		name: DATABASE,
+		log: logOf(home, DATABASE),
+		throwAway,
+		onStart
+	});
 	Object.assign(services.env, localDatabaseSettings(services.cluster.urls('trunnion')));
 }
 
 /**
  * @param {Services} services
- * @param {string} home
- * @param {NodeJS.ProcessEnv} given
- * @param {boolean} throwAway
- * @param {Started} started
+ * @param {Wishes} wishes
  */
-async function startStore(services, home, given, throwAway, started) {
+async function startStore(services, { home, given, throwAway, onStart }) {
 	if (hasOwnStore(given)) {
 		if (!given.S3_BUCKET) throw new Mendable('S3_ENDPOINT is set without S3_BUCKET: name the bucket too.');
 		return;
@@ -94,22 +95,16 @@ async function startStore(services, home, given, throwAway, started) {
 		S3_ACCESS_KEY_ID: randomBytes(16).toString('hex'),
 		S3_SECRET_ACCESS_KEY: randomBytes(24).toString('hex')
 	};
-	const command = [
-		process.execPath,
-		local('object-store.js'),
-		'--folder',
-		path.join(home, 'objects'),
-		'--bucket',
-		'trunnion'
-	];
+	const command = [process.execPath, path.join(root, 'src/local/object-store.js')];
+	command.push('--folder', path.join(home, 'objects'), '--bucket', 'trunnion');
 	if (throwAway) command.push('--throw-away');
 	const running = startProcess('object store', command, {
 		env: { ...services.env, ...keys },
 		cwd: root,
-		log: path.join(home, 'log', 'object-store.log'),
+		log: logOf(home, 'object-store'),
 		ipc: true
 	});
-	started(running);
+	onStart(running);
 	const { port } = await firstMessage(running);
 	Object.assign(services.env, keys, {
 		S3_ENDPOINT: `http://127.0.0.1:${port}`,
@@ -120,48 +115,21 @@ async function startStore(services, home, given, throwAway, started) {
 
 /**
  * @param {Services} services
- * @param {string} home
- * @param {NodeJS.ProcessEnv} given
- * @param {number} pagePort
- * @param {Started} started
+ * @param {Wishes} wishes
  */
-async function startMail(services, home, given, pagePort, started) {
+async function startMail(services, { home, given, pagePort, onStart }) {
 	if (hasOwnMail(given)) return;
-	const { running, smtpPort, page } = await startMailCatcher(
-		path.join(home, 'mail'),
-		path.join(home, 'log', 'mail.log'),
-		services.env,
-		pagePort
-	);
-	started(running);
-	services.env.SMTP_URL = `smtp://127.0.0.1:${smtpPort}`;
-	services.mailPage = page;
-}
-
-/**
- * @param {string} folder
- * @param {string} log
- * @param {NodeJS.ProcessEnv} env
- * @param {number} pagePort the wished port of its page; any other when that is taken
- */
-export async function startMailCatcher(folder, log, env, pagePort = 0) {
+	const command = [process.execPath, path.join(root, 'src/local/mail-catcher.js')];
 	const wished = pagePort > 0 && (await isPortFree('127.0.0.1', pagePort)) ? pagePort : 0;
-	const command = [
-		process.execPath,
-		local('mail-catcher.js'),
-		'--folder',
-		folder,
-		'--page-port',
-		String(wished)
-	];
-	const running = startProcess('mail catcher', command, { env, cwd: root, log, ipc: true });
+	command.push('--folder', path.join(home, 'mail'), '--page-port', String(wished));
+	const running = startProcess('mail catcher', command, {
+		env: services.env,
+		cwd: root,
+		log: logOf(home, 'mail-catcher'),
+		ipc: true
+	});
+	onStart(running);
 	const { smtpPort, pagePort: port } = await firstMessage(running);
-	return { running, smtpPort: Number(smtpPort), page: `http://127.0.0.1:${port}` };
-}
-
-/** @param {string} file */
-function local(file) {
-	const at = path.join(root, 'src', 'local', file);
-	if (!existsSync(at)) throw new Error(`${at} is missing`);
-	return at;
+	services.env.SMTP_URL = `smtp://127.0.0.1:${smtpPort}`;
+	services.mailPage = `http://127.0.0.1:${port}`;
 }

@@ -6,7 +6,7 @@ import { watchForErrors } from './log-watch.js';
 import { Mendable, localFolder, makeFolder, root, textOf } from './place.js';
 import { checkNode, ensureBuild, ensurePackages, runToEnd } from './prepare.js';
 import { endProcess, isAlive, isPortFree, lastLines, markOf, startProcess } from './processes.js';
-import { startServices } from './services.js';
+import { startServices, stopServices } from './services.js';
 
 /**
  * `npm start`: everything from a fresh clone to a page to sign in on, and the orderly end of all of it on Ctrl-C.
@@ -20,8 +20,8 @@ const web = webSettings(process.env);
 
 /** @type {Running[]} the application's own processes, in the order of their starting */
 const own = [];
-/** @type {import('./services.js').Services | null} */
-let services = null;
+/** @type {Running[]} */
+const serviceProcesses = [];
 /** @type {() => void} */
 let giveUpPlace = () => {};
 /** @type {Promise<void> | null} */
@@ -47,8 +47,9 @@ function remember(one) {
  * A part that all need: when it ends by itself, so does everything.
  * @param {Running} one
  */
-function rememberVital(one) {
-	remember(one);
+function watch(one) {
+	// An attempt that was followed by a better one, as when the database's port was taken at the last moment, is no loss.
+	if (state.processes[one.name]?.pid !== one.pid) return;
 	void one.gone.then((how) => {
 		if (stopping) return;
 		console.error(
@@ -67,6 +68,7 @@ function startOwn(name, args, env) {
 	const log = path.join(localFolder, 'log', `${name.replaceAll(' ', '-')}.log`);
 	const one = startProcess(name, [process.execPath, ...args], { env, cwd: root, log });
 	own.push(one);
+	remember(one);
 	watchForErrors(name, log);
 	return one;
 }
@@ -77,7 +79,7 @@ function stop(code) {
 		console.log('Stopping …');
 		// Whoever uses a service goes before it, and may finish what it is at.
 		for (const one of [...own].reverse()) await endProcess(one, 'SIGTERM', 12_000);
-		await services?.stop();
+		await stopServices(serviceProcesses);
 		forgetRunState();
 		giveUpPlace();
 		console.log('Stopped.');
@@ -113,7 +115,6 @@ async function waitForHealth() {
 /** @param {import('./cluster.js').Cluster} cluster */
 function startSeed(cluster) {
 	const seed = startOwn('demo seed', ['--import', 'tsx', 'src/seed.ts'], state.env);
-	remember(seed);
 	console.log('The demo laboratory is being filled in; its runs appear over the next minutes.');
 	void seed.gone.then((how) => {
 		own.splice(own.indexOf(seed), 1);
@@ -135,8 +136,8 @@ async function startApplication() {
 		throw new Mendable(`The database could not be migrated:\n${migrated.output.trim()}`);
 	console.log(migrated.output.trim());
 	if (stopping) return;
-	rememberVital(startOwn('worker', ['--import', 'tsx', 'src/worker.ts'], env));
-	rememberVital(startOwn('web server', ['build/index.js'], env));
+	watch(startOwn('worker', ['--import', 'tsx', 'src/worker.ts'], env));
+	watch(startOwn('web server', ['build/index.js'], env));
 	await waitForHealth();
 }
 
@@ -165,10 +166,17 @@ async function main() {
 	await ensurePackages();
 	if (!servicesOnly) await ensureBuild();
 	if (stopping) return;
-	services = await startServices(localFolder, process.env, {
+	const services = await startServices({
+		home: localFolder,
+		given: process.env,
+		throwAway: false,
 		pagePort: Number(web.PORT) + 1,
-		onStart: rememberVital
+		onStart: (one) => {
+			serviceProcesses.push(one);
+			remember(one);
+		}
 	});
+	serviceProcesses.forEach(watch);
 	Object.assign(state, { mailPage: services.mailPage, env: { ...services.env, ...web } });
 	writeRunState(state);
 	if (stopping) return;
@@ -192,6 +200,7 @@ for (const signal of /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP']))
 for (const stream of [process.stdout, process.stderr]) stream.on('error', () => {});
 
 main().catch(async (error) => {
+	if (stopping) return;
 	console.error(error instanceof Mendable ? error.message : error);
 	await stop(1);
 });
