@@ -20,7 +20,7 @@ export default defineConfig({
 				test: {
 					name: 'integration',
 					environment: 'node',
-					include: ['tests/integration/**/*.test.ts'],
+					include: ['tests/integration/**/*.test.ts', 'tests/fault/**/*.test.ts'],
 					testTimeout: 60_000,
 					hookTimeout: 120_000
 				}
@@ -34,6 +34,18 @@ export default defineConfig({
 					fileParallelism: false,
 					testTimeout: 120_000,
 					hookTimeout: 180_000
+				}
+			},
+			{
+				// Prints ratios; run by `npm run bench` only.
+				extends: true,
+				test: {
+					name: 'bench',
+					environment: 'node',
+					include: ['tests/bench/**/*.test.ts'],
+					fileParallelism: false,
+					testTimeout: 1_800_000,
+					hookTimeout: 300_000
 				}
 			}
 		]

@@ -119,17 +119,25 @@ async function startStore(services, { home, given, throwAway, onStart }) {
  */
 async function startMail(services, { home, given, pagePort, onStart }) {
 	if (hasOwnMail(given)) return;
-	const command = [process.execPath, path.join(root, 'src/local/mail-catcher.js')];
 	const wished = pagePort > 0 && (await isPortFree('127.0.0.1', pagePort)) ? pagePort : 0;
-	command.push('--folder', path.join(home, 'mail'), '--page-port', String(wished));
-	const running = startProcess('mail catcher', command, {
-		env: services.env,
-		cwd: root,
-		log: logOf(home, 'mail-catcher'),
-		ipc: true
-	});
+	const log = logOf(home, 'mail-catcher');
+	const mail = await startMailCatcher(path.join(home, 'mail'), log, services.env, wished, onStart);
+	services.env.SMTP_URL = mail.smtpUrl;
+	services.mailPage = mail.page;
+}
+
+/**
+ * @param {string} folder where the mails are kept
+ * @param {string} log
+ * @param {NodeJS.ProcessEnv} env
+ * @param {number} [pagePort]
+ * @param {(running: Running) => void} [onStart]
+ */
+export async function startMailCatcher(folder, log, env, pagePort = 0, onStart = () => {}) {
+	const command = [process.execPath, path.join(root, 'src/local/mail-catcher.js')];
+	command.push('--folder', folder, '--page-port', String(pagePort));
+	const running = startProcess('mail catcher', command, { env, cwd: root, log, ipc: true });
 	onStart(running);
 	const { smtpPort, pagePort: port } = await firstMessage(running);
-	services.env.SMTP_URL = `smtp://127.0.0.1:${smtpPort}`;
-	services.mailPage = `http://127.0.0.1:${port}`;
+	return { running, smtpUrl: `smtp://127.0.0.1:${smtpPort}`, page: `http://127.0.0.1:${port}` };
 }
