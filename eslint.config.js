@@ -5,17 +5,24 @@ import path from 'node:path';
 import ts from 'typescript-eslint';
 import svelteConfig from './svelte.config.js';
 
-/** The layer and, within `server`, the subject that a file below `src` belongs to. */
+/**
+ * The layer and, within `server`, the subject that a file below `src` belongs to.
+ * @param {string} file
+ * @returns {{ layer: string, subject?: string, rest?: string }}
+ */
 function placeOf(file) {
 	const at = file.replaceAll('\\', '/').split('/src/').pop() ?? '';
 	const server = /^lib\/server\/([^/]+)\/(.*)$/.exec(at);
 	if (server) return { layer: 'server', subject: server[1], rest: server[2] };
 	const lib = /^lib\/(domain|components|client)\//.exec(at);
-	if (lib) return { layer: lib[1] };
+	if (lib?.[1]) return { layer: lib[1] };
 	return { layer: at.startsWith('routes/') ? 'routes' : at.startsWith('local/') ? 'local' : 'entry' };
 }
 
-/** What each layer may import; DEVELOPERS.md says why. */
+/**
+ * What each layer may import; DEVELOPERS.md says why.
+ * @type {Record<string, string[]>}
+ */
 const MAY_IMPORT = {
 	domain: ['domain'],
 	client: ['client', 'domain'],
@@ -26,12 +33,13 @@ const MAY_IMPORT = {
 	entry: ['server', 'domain', 'entry', 'components', 'client']
 };
 
+/** @type {import('eslint').Rule.RuleModule} */
 const oneWayImports = {
 	meta: { type: 'problem', schema: [] },
 	create(context) {
 		const from = placeOf(context.filename);
 		if (!context.filename.includes('/src/')) return {};
-		const check = (node) => {
+		const check = (/** @type {import('estree').Node & { source?: { value?: unknown } | null }} */ node) => {
 			const name = node.source?.value;
 			if (typeof name !== 'string') return;
 			if (from.layer === 'server' && /^\$(app|env)\//.test(name))

@@ -16,6 +16,30 @@ export const WindowQuery = z.object({
 	trace: z.uuid().optional()
 });
 
+const Extremes = z.object({
+	unit: z.string(),
+	lo: z.array(z.number().nullable()),
+	hi: z.array(z.number().nullable())
+});
+export const WindowView = z.object({
+	/** Single samples, or the lowest and highest of each bucket. */
+	mode: z.enum(['samples', 'envelope']),
+	clock: z.enum(['time', 'row']),
+	from: z.number(),
+	to: z.number(),
+	samples: z.number(),
+	/** Time of each bucket's first sample, s. */
+	time: z.array(z.number()),
+	channels: z.record(z.string(), Extremes)
+});
+
+export function windowJson({ channels, ...window }: TraceWindow): z.input<typeof WindowView> {
+	return {
+		...window,
+		channels: Object.fromEntries(channels.map(({ code, ...extremes }) => [code, extremes]))
+	};
+}
+
 async function findTrace(deps: Deps, who: Principal, runRef: string, traceId: string | undefined) {
 	return reading(deps.pools, who, async (trx) => {
 		const { id: runId } = await resolve(trx, 'run', runRef);
