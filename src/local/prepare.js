@@ -90,7 +90,6 @@ function isSameTree(installedFile) {
 const SOURCES = [
 	'src',
 	'static',
-	'package.json',
 	'package-lock.json',
 	'svelte.config.js',
 	'tailwind.config.ts',

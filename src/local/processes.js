@@ -159,3 +159,18 @@ export function accepts(host, port) {
 		socket.once('error', () => resolve(false));
 	});
 }
+
+/**
+ * Calls back when npm, under which this process was started, is gone: nobody is left then who could stop it.
+ * @param {() => void} orphaned
+ */
+export function whenNpmIsGone(orphaned) {
+	if (!process.env.npm_lifecycle_event) return;
+	const parent = process.ppid;
+	const timer = setInterval(() => {
+		if (process.ppid === parent) return;
+		clearInterval(timer);
+		orphaned();
+	}, 500);
+	timer.unref();
+}

@@ -5,7 +5,15 @@ import { endLeftovers, forgetRunState, takeLauncherPlace, writeRunState } from '
 import { watchForErrors } from './log-watch.js';
 import { Mendable, localFolder, makeFolder, root, textOf } from './place.js';
 import { checkNode, ensureBuild, ensurePackages, runToEnd } from './prepare.js';
-import { endProcess, isAlive, isPortFree, lastLines, markOf, startProcess } from './processes.js';
+import {
+	endProcess,
+	isAlive,
+	isPortFree,
+	lastLines,
+	markOf,
+	startProcess,
+	whenNpmIsGone
+} from './processes.js';
 import { startServices, stopServices } from './services.js';
 
 /**
@@ -22,8 +30,8 @@ const web = webSettings(process.env);
 const own = [];
 /** @type {Running[]} */
 const serviceProcesses = [];
-/** @type {() => void} */
-let giveUpPlace = () => {};
+/** @type {(() => void) | null} set while this clone is ours */
+let giveUpPlace = null;
 /** @type {Promise<void> | null} */
 let stopping = null;
 
@@ -76,13 +84,14 @@ function startOwn(name, args, env) {
 /** @param {number} code */
 function stop(code) {
 	stopping ??= (async () => {
-		console.log('Stopping …');
+		if (!giveUpPlace) process.exit(code);
+		if (own.length + serviceProcesses.length) console.log('Stopping …');
 		// Whoever uses a service goes before it, and may finish what it is at.
 		for (const one of [...own].reverse()) await endProcess(one, 'SIGTERM', 12_000);
 		await stopServices(serviceProcesses);
 		forgetRunState();
 		giveUpPlace();
-		console.log('Stopped.');
+		if (own.length + serviceProcesses.length) console.log('Stopped.');
 		process.exit(code);
 	})();
 	return stopping;
@@ -196,6 +205,9 @@ for (const signal of /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP']))
 		if (stopping) stopAtOnce();
 		else void stop(signal === 'SIGINT' ? 130 : 143);
 	});
+whenNpmIsGone(() => {
+	if (!stopping) void stop(143);
+});
 // The terminal may go before the launcher does.
 for (const stream of [process.stdout, process.stderr]) stream.on('error', () => {});
 

@@ -3,6 +3,7 @@ import { parseArgs } from 'node:util';
 import { chromium } from './debian.js';
 import { Mendable, localFolder, makeFolder, textOf } from './place.js';
 import { checkNode, ensureBuild, ensurePackages, program, runToEnd } from './prepare.js';
+import { whenNpmIsGone } from './processes.js';
 import { startServices, stopServices } from './services.js';
 import { makeTestFolder } from './test-folder.js';
 import { CHECKS, SUITES, endSteps, runStep, summary, vitest } from './test-steps.js';
@@ -152,11 +153,13 @@ async function main() {
 	process.exitCode = failed ? 1 : 0;
 }
 
-for (const signal of /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP']))
-	process.on(signal, () => {
-		interrupted = true;
-		endSteps();
-	});
+function interrupt() {
+	interrupted = true;
+	endSteps();
+}
+
+for (const signal of /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP'])) process.on(signal, interrupt);
+whenNpmIsGone(interrupt);
 
 main().catch((error) => {
 	console.error(error instanceof Mendable ? error.message : error);
