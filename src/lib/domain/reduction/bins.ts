@@ -46,3 +46,52 @@ export function binBySpeed(
 	}
 	return { columns: means, n: Float64Array.from(kept, ([, count]) => count) };
 }
+
+const DEFAULT_WIDTH_RPM = 100;
+const WIDER_RPM = [200, 250, 500, 1000];
+const NARROWER_RPM = [50, 25, 10];
+/** A curve of fewer bins than this is drawn with narrower ones, where the samples allow. */
+const LEAST_BINS = 10;
+const FILLED_SHARE = 0.8;
+
+function filledShare(
+	binBy: Float64Array,
+	rows: readonly number[],
+	widthRpm: number,
+	least: number
+): { bins: number; share: number } {
+	const counts = new Map<number, number>();
+	for (const row of rows) {
+		const bin = Math.floor(binBy[row]! / widthRpm);
+		if (Number.isFinite(bin)) counts.set(bin, (counts.get(bin) ?? 0) + 1);
+	}
+	if (counts.size === 0) return { bins: 0, share: 0 };
+	let [lo, hi] = [Infinity, -Infinity];
+	let filled = 0;
+	for (const [bin, count] of counts) {
+		lo = Math.min(lo, bin);
+		hi = Math.max(hi, bin);
+		if (count >= least) filled++;
+	}
+	return { bins: filled, share: filled / (hi - lo + 1) };
+}
+
+/**
+ * The width of bins where the run does not set one: 100 rev/min, wider where a fast ramp or a slow recorder would leave bins
+ * empty, narrower where the ramp spans too few of them.
+ */
+export function defaultBinWidth(binBy: Float64Array, rows: readonly number[], least: number): number {
+	const usual = filledShare(binBy, rows, DEFAULT_WIDTH_RPM, least);
+	if (usual.share < FILLED_SHARE)
+		return (
+			WIDER_RPM.find((width) => filledShare(binBy, rows, width, least).share >= FILLED_SHARE) ??
+			WIDER_RPM.at(-1)!
+		);
+	if (usual.bins >= LEAST_BINS) return DEFAULT_WIDTH_RPM;
+	const fine = NARROWER_RPM.filter((width) => filledShare(binBy, rows, width, least).share >= FILLED_SHARE);
+	return (
+		fine.find((width) => filledShare(binBy, rows, width, least).bins >= LEAST_BINS) ??
+		fine.at(-1) ??
+		DEFAULT_WIDTH_RPM
+	);
+}

@@ -1,21 +1,29 @@
 import type { Columns } from '../trace/atmosphere';
-import { LOCAL_FIT, localPeak, localValue } from './local-peak';
+import { LOCAL_FIT, localPeak, localValue, seriesOf } from './local-peak';
 import type { Place, PlacedValue, Places } from './places';
 
-/** Extremes of a curve over speed by local fit, inside the measured speeds. */
-export function curvePlaces(curve: Columns, range: readonly [number, number]): Places {
+/**
+ * Extremes of a curve over speed by local fit, inside the measured speeds.
+ *
+ * @param weights samples behind each bin
+ */
+export function curvePlaces(curve: Columns, weights: Float64Array, range: readonly [number, number]): Places {
 	const speed = curve.get('speed') ?? new Float64Array();
+	const series = (code: string) => {
+		const values = curve.get(code);
+		return values ? seriesOf(speed, values, weights) : null;
+	};
 	return {
 		method: LOCAL_FIT,
 		codes: () => [...curve.keys()],
 		peak(code, sign): PlacedValue | null {
-			const values = curve.get(code);
-			const found = values ? localPeak(speed, values, range, sign) : null;
+			const curveOf = series(code);
+			const found = curveOf && localPeak(curveOf, range, sign);
 			return found && { value: found.value, u: found.u, key: found.x, at: { speed: found.x } };
 		},
 		valueAt(code, place: Place) {
-			const values = curve.get(code);
-			return values ? localValue(speed, values, place.key) : null;
+			const curveOf = series(code);
+			return curveOf && localValue(curveOf, place.key);
 		}
 	};
 }

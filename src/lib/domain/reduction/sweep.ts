@@ -2,7 +2,7 @@ import { quantile } from '../statistics/moments';
 import type { Finding, RunContext } from '../model';
 import { derive } from '../trace/derive';
 import { figure } from '../trace/spans';
-import { binBySpeed } from './bins';
+import { binBySpeed, defaultBinWidth } from './bins';
 import { correct, correctedMetrics } from './corrected';
 import { curveMetrics } from './curve-metrics';
 import { curvePlaces } from './curve-places';
@@ -11,7 +11,7 @@ import { centredMean } from './prepare';
 import { findRamps, type Ramp } from './ramp';
 import { toCurve, type Reduced } from './reduced';
 
-const DEFAULTS = { speedBinRpm: 100, minSamplesPerBin: 3, fullLoadShare: 0.95 };
+const DEFAULTS = { minSamplesPerBin: 3, fullLoadShare: 0.95 };
 /** Width of the mean that frees the speed of noise before samples are sorted into bins, s. */
 const SORTING_S = 0.2;
 /** Conditions of the room do not follow the engine's speed: one mean of the ramp is surer than one of each bin. */
@@ -43,7 +43,7 @@ function meanOver(values: Float64Array, rows: readonly number[]): number {
 	return n > 0 ? sum / n : NaN;
 }
 
-const width = (ramp: Ramp) => ramp.speeds[1] - ramp.speeds[0];
+const spanOf = (ramp: Ramp) => ramp.speeds[1] - ramp.speeds[0];
 
 /** The ramps that make the curve: one direction, up unless down carries clearly more; short attempts are left out. */
 function chooseRamps(
@@ -51,8 +51,8 @@ function chooseRamps(
 	speed: Float64Array,
 	torque: Float64Array
 ): { used: Ramp[]; findings: Finding[] } {
-	const widest = Math.max(...ramps.map(width));
-	const whole = ramps.filter((ramp) => width(ramp) >= 0.5 * widest);
+	const widest = Math.max(...ramps.map(spanOf));
+	const whole = ramps.filter((ramp) => spanOf(ramp) >= 0.5 * widest);
 	const up = whole.filter((ramp) => ramp.direction === 'up');
 	const down = whole.filter((ramp) => ramp.direction === 'down');
 	const [powerUp, powerDown] = [meanPower(speed, torque, up), meanPower(speed, torque, down)];
@@ -165,7 +165,15 @@ export function reduceSweep(
 	for (const { from, to } of used)
 		sorting.set(centredMean(time, speed, from, to, SORTING_S).subarray(from, to), from);
 	const rows = fullLoadRows(used, full.get('throttle'), settings.fullLoadShare);
-	const binned = binBySpeed(full, sorting, rows, settings.speedBinRpm, settings.minSamplesPerBin);
+	const width = settings.speedBinRpm ?? defaultBinWidth(sorting, rows, settings.minSamplesPerBin);
+	if (settings.speedBinRpm === undefined && width !== 100)
+		findings.push({
+			code: 'bin_width',
+			severity: 'info',
+			message: `Bins of ${width} rev/min are used in place of 100, to suit the ramp and the sample rate.`,
+			spans: []
+		});
+	const binned = binBySpeed(full, sorting, rows, width, settings.minSamplesPerBin);
 	const count = binned.n.length;
 	const curve = new Map(binned.columns);
 	for (const code of ROOM) {
@@ -179,10 +187,10 @@ export function reduceSweep(
 		findings.push({
 			code: 'few_bins',
 			severity: 'warning',
-			message: `Only ${count} speed bins of ${settings.speedBinRpm} rev/min hold ${settings.minSamplesPerBin} samples or more; the figures are rough. Choose wider bins or record faster.`,
+			message: `Only ${count} speed bins of ${width} rev/min hold ${settings.minSamplesPerBin} samples or more; the figures are rough. Choose wider bins or record faster.`,
 			spans: []
 		});
-	const places = curvePlaces(curve, measuredRange(used, rows, sorting));
+	const places = curvePlaces(curve, binned.n, measuredRange(used, rows, sorting));
 	const metrics = {
 		...curveMetrics(places),
 		...correctedMetrics(correcting, places, curve, context.correction)
