@@ -11,16 +11,21 @@ const FONT = '12px "Archivo Variable", system-ui, sans-serif';
 
 export type PlotOptions = Omit<uPlot.Options, 'width' | 'height'>;
 
-/** Tick texts with the decimals that their step needs and no more. */
-export function tickTexts(
-	_: unknown,
-	ticks: number[],
-	_axis: unknown,
-	_space: unknown,
-	step: number
-): string[] {
-	const decimals = Math.max(0, -Math.floor(Math.log10(step) + 1e-9));
-	return ticks.map((tick) => formatNumber(tick, decimals));
+/** Decimals without which neighbouring ticks would read alike or wrong: 0.25 needs two. */
+export function decimalsOfStep(step: number): number {
+	for (let decimals = 0; decimals < 9; decimals++) {
+		const scaled = step * 10 ** decimals;
+		if (Math.abs(scaled - Math.round(scaled)) < 1e-6 * scaled) return decimals;
+	}
+	return 9;
+}
+
+/** Texts of an axis; none beside a curve where there is nothing to read off (no data yet, or all of it gaps). */
+function tickTexts(plot: uPlot, ticks: number[], axis: number, _space: number, step: number): string[] {
+	const isEmpty =
+		axis > 0 && !plot.data.slice(1).some((values) => Array.from(values ?? []).some((value) => value != null));
+	const decimals = decimalsOfStep(step);
+	return ticks.map((tick) => (isEmpty ? '' : formatNumber(tick, decimals)));
 }
 
 interface AxisOf {
@@ -32,11 +37,13 @@ interface AxisOf {
 	/** Ink of ticks and label: the series' own where two share a pane. */
 	ink?: string;
 	grid?: boolean;
+	/** Least px between ticks. */
+	space?: number;
 }
 
 const SIDES = { bottom: 2, left: 3, right: 1 } as const;
 
-export function axisOf({ scheme, scale, side, label, ink, grid = true }: AxisOf): uPlot.Axis {
+export function axisOf({ scheme, scale, side, label, ink, grid = true, space }: AxisOf): uPlot.Axis {
 	const rule = colour('rule', scheme);
 	return {
 		scale,
@@ -47,7 +54,7 @@ export function axisOf({ scheme, scale, side, label, ink, grid = true }: AxisOf)
 		values: tickTexts,
 		size: side === 'bottom' ? 26 : GUTTER,
 		gap: 4,
-		space: side === 'bottom' ? 72 : 22,
+		space: space ?? (side === 'bottom' ? 72 : 24),
 		grid: { show: grid, stroke: rule, width: 1 },
 		ticks: { show: false },
 		...(label ? { label, labelSize: 18, labelGap: 0 } : {})

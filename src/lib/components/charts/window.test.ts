@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { around, fit, isSame, pan, zoom } from './window';
+import { around, fit, isSame, nearest, pan, zoom } from './window';
 
 const WHOLE = { from: 0, to: 45 };
 
@@ -36,4 +36,15 @@ describe('a window on a trace', () => {
 		expect(around([18, 18])).toEqual({ from: 17.5, to: 18.5 });
 		expect(around([12, 15])).toEqual({ from: 11, to: 16 });
 	});
+});
+
+describe('the bucket nearest to a time', () => {
+	it.each([
+		[-5, 0],
+		[0.4, 0],
+		[0.6, 1],
+		[2.9, 3],
+		[99, 4]
+	])('of 0 … 4 s to %f s is %i', (wanted, index) => expect(nearest([0, 1, 2, 3, 4], wanted)).toBe(index));
+	it('is none when there are none', () => expect(nearest([], 1)).toBeNull());
 });

@@ -33,3 +33,17 @@ export function isSame(a: Window, b: Window): boolean {
 	const hair = 1e-6 * Math.max(a.to - a.from, b.to - b.from);
 	return Math.abs(a.from - b.from) <= hair && Math.abs(a.to - b.to) <= hair;
 }
+
+/** Index of the time nearest to `wanted` in rising times; null when there are none. */
+export function nearest(times: readonly number[], wanted: number): number | null {
+	if (times.length === 0) return null;
+	let low = 0;
+	let high = times.length - 1;
+	while (high - low > 1) {
+		const middle = (low + high) >> 1;
+		if ((times[middle] ?? Infinity) <= wanted) low = middle;
+		else high = middle;
+	}
+	const distance = (index: number) => Math.abs((times[index] ?? Infinity) - wanted);
+	return distance(low) <= distance(high) ? low : high;
+}

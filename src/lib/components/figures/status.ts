@@ -19,6 +19,11 @@ const STATUSES = {
 		accepted: of('Accepted', 'tick', 'good'),
 		voided: of('Voided', 'struck', 'muted')
 	},
+	build: {
+		in_preparation: of('In preparation', 'ring', 'attention'),
+		ready: of('Ready', 'tick', 'good'),
+		retired: of('Retired', 'struck', 'muted')
+	},
 	booking: {
 		requested: of('Requested', 'ring', 'attention'),
 		confirmed: of('Confirmed', 'disc', 'accent'),
