@@ -116,6 +116,15 @@ function clashProblem(clashes: Clash[], zone: string): Problem {
 }
 
 /**
+ * Refuses early what already clashes. Called before the cell is waited for, so that of many who want the same hour the losers
+ * do not queue; only the exclusion constraint decides who wins.
+ */
+export async function requireFree(trx: Trx, deps: Deps, who: Actor, wish: Wish): Promise<void> {
+	const clashes = (await clashesOf(trx, who, [wish])).get(wish.key);
+	if (clashes) throw clashProblem(clashes, deps.config.labTimeZone);
+}
+
+/**
  * Runs a change that may meet the exclusion constraint. When it does, everything is rolled back, and a new transaction asks,
  * as this person, what stands there.
  * @param wishOf the time that was wanted, once `change` knows it

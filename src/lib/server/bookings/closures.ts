@@ -4,7 +4,7 @@ import { rangeOf, recordAudit, writing, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { notFound } from '../problem';
 import { resolve } from '../refs';
-import { tellingClash, type Wish } from './clash';
+import { requireFree, tellingClash, type Wish } from './clash';
 import { lockCells } from './locked';
 import type { Closure, NewClosureInput } from './schemas';
 import { requireClosureTimes } from './times';
@@ -17,6 +17,7 @@ export async function closeCell(deps: Deps, who: Principal, input: NewClosureInp
 	const close = async (trx: Trx): Promise<Closure> => {
 		const cell = await resolve(trx, 'cell', input.cell, { field: 'cell' });
 		wish = { key: cell.id, cellId: cell.id, buildId: null, during: input, ignore: [] };
+		await requireFree(trx, deps, who, wish);
 		await lockCells(trx, cell.id);
 		const { id } = await trx
 			.insertInto('occupancy')

@@ -3,7 +3,7 @@ import { requireMay, type Principal } from '../access';
 import { rangeOf, recordAudit, writing, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { conflict, forbidden } from '../problem';
-import { tellingClash, type Wish } from './clash';
+import { requireFree, tellingClash, type Wish } from './clash';
 import { bookingRow, lockBooking, lockCells, promiseMail, requireOpen, type LockedBooking } from './locked';
 import type { AsHistory } from './request';
 import type { Booking } from './schemas';
@@ -65,7 +65,6 @@ export async function confirmBooking(
 		if (!asHistory && during.to <= now)
 			throw conflict(`${number} lies in the past, so it cannot be confirmed. Move it, or decline it.`);
 		const old = await slotToReplace(trx, row, now);
-		await lockCells(trx, cellId, ...(old ? [old.cellId] : []));
 		const cell = await trx
 			.selectFrom('cell')
 			.select(['rigUpMinutes', 'rigDownMinutes'])
@@ -73,6 +72,8 @@ export async function confirmBooking(
 			.executeTakeFirstOrThrow();
 		const taken = withRigTime(during, cell.rigUpMinutes, cell.rigDownMinutes);
 		wish = { key: id, cellId, buildId, during: taken, ignore: old ? [old.id] : [] };
+		await requireFree(trx, deps, who, wish);
+		await lockCells(trx, cellId, ...(old ? [old.cellId] : []));
 		if (old) await endReplaced(trx, deps, who, old, number);
 		await trx
 			.insertInto('occupancy')

@@ -4,7 +4,7 @@ import { nextNumber, rangeOf, recordAudit, writing, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { conflict, forbidden } from '../problem';
 import { resolve } from '../refs';
-import { tellingClash, type Wish } from './clash';
+import { requireFree, tellingClash, type Wish } from './clash';
 import { lockBooking, lockCells, promiseMail, requireOpen, type LockedBooking } from './locked';
 import type { Booking, BookingMoveInput } from './schemas';
 import { requireBookingTimes } from './times';
@@ -46,6 +46,7 @@ export async function moveBooking(
 			return bookingView(trx, deps, who, await askToMove(trx, deps, who, row, target));
 		if (row.state === 'confirmed') {
 			wish = await wishOf(trx, row, target);
+			await requireFree(trx, deps, who, wish);
 			await lockCells(trx, row.cellId, target.cellId);
 			await trx
 				.updateTable('occupancy')
