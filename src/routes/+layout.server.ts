@@ -1,4 +1,4 @@
-import { actionsOf } from '$lib/server/access';
+import { actionsOf, type Action } from '$lib/server/access';
 import { getClient } from '$lib/server/clients';
 import type { LayoutServerLoad } from './$types';
 
@@ -6,8 +6,16 @@ import type { LayoutServerLoad } from './$types';
 export const load: LayoutServerLoad = async ({ locals, cookies }) => {
 	const { who, deps, theme } = locals;
 	const rail: 'wide' | 'narrow' = cookies.get('rail') === 'narrow' ? 'narrow' : 'wide';
+	const nobodyMay: Action[] = [];
 	if (!who)
-		return { person: null, theme, rail, may: [], zone: deps.config.labTimeZone, lab: deps.config.labName };
+		return {
+			person: null,
+			theme,
+			rail,
+			may: nobodyMay,
+			zone: deps.config.labTimeZone,
+			lab: deps.config.labName
+		};
 	const client = who.clientId ? await getClient(deps, who, who.clientId) : null;
 	return {
 		person: { name: who.name, role: who.role, client },

@@ -15,7 +15,13 @@ const child = [
 describe('what a build changes', () => {
 	it('shows differences first and what stayed last', () =>
 		expect(partChanges(child, parent)).toEqual([
-			{ key: 'Intake runners#1', name: 'Intake runners', value: '240 mm', before: '310 mm', change: 'changed' },
+			{
+				key: 'Intake runners#1',
+				name: 'Intake runners',
+				value: '240 mm',
+				before: '310 mm',
+				change: 'changed'
+			},
 			{ key: 'Restrictor#1', name: 'Restrictor', value: '32 mm', before: null, change: 'added' },
 			{ key: 'Flywheel#1', name: 'Flywheel', value: null, before: 'steel', change: 'removed' },
 			{ key: 'Camshafts#1', name: 'Camshafts', value: '264°', before: '264°', change: 'same' }

@@ -11,6 +11,7 @@ import {
 	formatSpan,
 	formatWithUncertainty,
 	NONE,
+	plainNumber,
 	THIN
 } from './format';
 import { labelOf, METRIC_CODES } from './labels';
@@ -41,6 +42,16 @@ describe('formatNumber', () => {
 			)
 		);
 	});
+});
+
+describe('plainNumber', () => {
+	it.each([
+		[3.7, '3.7'],
+		[10500, `10${THIN}500`],
+		[-0.00083, '−0.00083'],
+		[8.3e-7, '0.00000083'],
+		[0, '0']
+	])('%f is %s', (value, text) => expect(plainNumber(value)).toBe(text));
 });
 
 describe('significant digits', () => {

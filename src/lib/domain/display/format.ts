@@ -24,6 +24,13 @@ export function formatNumber(value: number | null | undefined, decimals: number)
 	return `${value < 0 && !isZero ? MINUS : ''}${grouped}${fraction === undefined ? '' : `.${fraction}`}`;
 }
 
+/** A number with the digits it was given, none added and none cut: for limits, settings and facts that someone typed. */
+export function plainNumber(value: number): string {
+	const [mantissa = '', exponent = '0'] = String(value).split('e');
+	const decimals = (mantissa.split('.')[1]?.length ?? 0) - Number(exponent);
+	return formatNumber(value, Math.min(20, Math.max(0, decimals)));
+}
+
 /** Decimals that show `significant` digits of `value` after rounding (0.0996 to two digits is 0.10, not 0.100). */
 export function decimalsOf(value: number, significant: number): number {
 	const magnitude = Math.abs(value);

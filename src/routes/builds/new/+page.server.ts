@@ -2,10 +2,11 @@ import { fail, redirect } from '@sveltejs/kit';
 import { superValidate } from 'sveltekit-superforms';
 import { zod4 } from 'sveltekit-superforms/adapters';
 import { z } from 'zod';
-import { createBuild, listBuilds } from '$lib/server/builds';
+import { createBuild, getBuild, listBuilds } from '$lib/server/builds';
 import { listEngines } from '$lib/server/engines';
 import { pageData, personMay, refused } from '$lib/server/web';
 import type { Actions, PageServerLoad } from './$types';
+import { partProblems, partsOf, partsText } from './parts';
 
 const BuildForm = z.object({
 	engine: z.string().min(1, 'Choose the engine.'),
@@ -20,28 +21,14 @@ const BuildForm = z.object({
 		.max(200, 'At most 200 characters.'),
 	parent: z.string().default(''),
 	/** One part a line: name, colon, value. */
-	parts: z.string().max(20_000, 'At most 20 000 characters.').default('')
-});
-
-function partsOf(text: string): { name: string; value: string }[] {
-	return text
-		.split('\n')
-		.map((line) => line.trim())
-		.filter(Boolean)
-		.map((line) => {
-			const colon = line.indexOf(':');
-			return colon < 0
-				? { name: line.slice(0, 80), value: '' }
-				: {
-						name: line.slice(0, colon).trim().slice(0, 80),
-						value: line
-							.slice(colon + 1)
-							.trim()
-							.slice(0, 500)
-					};
+	parts: z
+		.string()
+		.max(20_000, 'At most 20 000 characters.')
+		.default('')
+		.superRefine((text, check) => {
+			for (const message of partProblems(text)) check.addIssue({ code: 'custom', message });
 		})
-		.filter((part) => part.name);
-}
+});
 
 export const load: PageServerLoad = async ({ locals, url }) => {
 	const who = personMay(locals, 'build.write');
@@ -50,9 +37,18 @@ export const load: PageServerLoad = async ({ locals, url }) => {
 			listEngines(locals.deps, who),
 			listBuilds(locals.deps, who, { limit: 200 })
 		]);
+		const parentRef = url.searchParams.get('parent');
+		// A child starts with its parent's parts, so that only what differs has to be typed.
+		const parent = parentRef ? await getBuild(locals.deps, who, parentRef) : null;
+		const engineRef = parent?.engine ?? url.searchParams.get('engine');
+		const engine = engines.find(
+			({ id, client, code }) =>
+				id === engineRef || (code === engineRef && (!parent || client === parent.client))
+		);
 		const start = {
-			engine: url.searchParams.get('engine') ?? '',
-			parent: url.searchParams.get('parent') ?? ''
+			engine: engine?.id ?? '',
+			parent: parent?.id ?? '',
+			parts: partsText(parent?.parts ?? [])
 		};
 		return {
 			form: await superValidate(start, zod4(BuildForm), { errors: false }),
