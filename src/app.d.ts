@@ -1,3 +1,4 @@
+import type { IncomingMessage } from 'node:http';
 import type { Principal } from '$lib/server/access';
 import type { Deps } from '$lib/server/deps';
 
@@ -7,6 +8,10 @@ declare global {
 			message: string;
 			/** Quote it when asking for help: the log has the rest. */
 			requestId?: string;
+		}
+		/** What Node's adapter passes on. */
+		interface Platform {
+			req?: IncomingMessage;
 		}
 		interface Locals {
 			deps: Deps;

@@ -1,5 +1,6 @@
 import type { RequestEvent, RequestHandler } from '@sveltejs/kit';
 import { createHash } from 'node:crypto';
+import type { Readable } from 'node:stream';
 import { z } from 'zod';
 import { requireMay, type Action, type Principal } from '../access';
 import { log } from '../config';
@@ -26,6 +27,8 @@ export interface Call<Q, B> {
 	/** The version named by If-Match, when sent. */
 	ifMatch: number | null;
 	request: Request;
+	/** The body as bytes, for operations that take them. */
+	bytes: ReadableStream<Uint8Array> | Readable | null;
 	url: URL;
 }
 
@@ -93,6 +96,7 @@ async function answer(definition: Operation, event: RequestEvent): Promise<Respo
 		body: parsed.value,
 		ifMatch: versionOf(event.request.headers.get('if-match')),
 		request: event.request,
+		bytes: definition.bytes ? bytesOf(event) : null,
 		url: event.url
 	};
 	const claim = claimOf(event, who, parsed.sha256);
@@ -104,6 +108,16 @@ async function answer(definition: Operation, event: RequestEvent): Promise<Respo
 	if (claim.taken && !(result instanceof Response))
 		await writing(deps.pools, who, (trx) => rememberAnswer(trx, claim, response.status, result));
 	return response;
+}
+
+/**
+ * Node's adapter gives no body to a request without a content type, though bytes may well come; they are read from the
+ * connection then, so that nobody is told that a file was empty which was not.
+ */
+function bytesOf(event: RequestEvent): Call<unknown, unknown>['bytes'] {
+	if (event.request.body) return event.request.body;
+	const raw = event.platform?.req;
+	return raw && event.request.headers.get('content-type') === null && !raw.readableEnded ? raw : null;
 }
 
 function claimOf(event: RequestEvent, who: Principal, bodySha256: Buffer | null): KeyClaim | null {

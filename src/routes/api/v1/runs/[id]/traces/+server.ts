@@ -10,10 +10,10 @@ export const POST = operation({
 	bytes: true,
 	answer: z.object({ id: z.string(), state: z.literal('received') }),
 	status: 202,
-	run: ({ deps, who, params, query, request }) =>
+	run: ({ deps, who, params, query, request, bytes }) =>
 		receiveTrace(deps, who, params.id!, {
 			filename: query.filename ?? null,
-			body: request.body,
+			body: bytes,
 			declaredBytes: Number(request.headers.get('content-length') ?? Number.NaN) || null
 		})
 });
