@@ -23,6 +23,9 @@ interface Mailbox {
 	email: string;
 }
 
+/** A name as a quoted parameter: RFC 5545 has no way to write a double quote in one, and the library's backslash is none. */
+const quotable = ({ name }: Mailbox) => oneLine(name).replaceAll('"', '’').replaceAll('\\', '/');
+
 /** An iTIP message (RFC 5546) about one slot, times in UTC. The slot is theirs already, so no reply is asked for. */
 export function calendarText(
 	facts: CalendarFacts,
@@ -45,10 +48,10 @@ export function calendarText(
 		description: facts.description,
 		url: facts.url,
 		status: method === 'CANCEL' ? ICalEventStatus.CANCELLED : ICalEventStatus.CONFIRMED,
-		organizer: { name: oneLine(organizer.name), email: organizer.email },
+		organizer: { name: quotable(organizer), email: organizer.email },
 		attendees: [
 			{
-				name: oneLine(attendee.name),
+				name: quotable(attendee),
 				email: attendee.email,
 				rsvp: false,
 				status: ICalAttendeeStatus.ACCEPTED

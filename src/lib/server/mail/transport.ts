@@ -9,6 +9,8 @@ function open(smtpUrl: string): Transporter {
 		url: smtpUrl,
 		pool: true,
 		maxConnections: 2,
+		// Only the job queue tries again: it counts, waits longer each time, and is not lost with this process.
+		maxRequeues: 0,
 		connectionTimeout: 10_000,
 		greetingTimeout: 10_000,
 		socketTimeout: 30_000,
