@@ -41,8 +41,8 @@ export const bytesOf = (type: FloatType) => (type === 'f32' ? 4 : 8);
 export const padded = (bytes: number) => Math.ceil(bytes / 8) * 8;
 
 export function floatsOf(bytes: Uint8Array, type: FloatType): Float32Array | Float64Array {
-	// A copy starts at an aligned address, whatever the store handed over.
-	const copy = bytes.slice().buffer;
+	// A copy starts at an aligned address, whatever the store handed over (a Buffer's own slice() would be a view).
+	const copy = Uint8Array.from(bytes).buffer;
 	return type === 'f32' ? new Float32Array(copy) : new Float64Array(copy);
 }
 
