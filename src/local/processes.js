@@ -1,7 +1,8 @@
 import { spawn } from 'node:child_process';
 import { closeSync, existsSync, openSync, readFileSync, renameSync, statSync } from 'node:fs';
-import { createConnection, createServer } from 'node:net';
+import { createServer } from 'node:net';
 import { setTimeout as sleep } from 'node:timers/promises';
+import { codeOf } from './place.js';
 
 /**
  * A process that was started here. `started` is the kernel's start time: with it a number that was given to
@@ -118,16 +119,16 @@ export function lastLines(file, count) {
 }
 
 /**
- * Whether a TCP port on this address can be listened on now.
+ * What stands against listening on this address now: a system error's code, or null.
  * @param {string} host
  * @param {number} port
- * @returns {Promise<boolean>}
+ * @returns {Promise<string | null>}
  */
-export function isPortFree(host, port) {
+export function portTrouble(host, port) {
 	return new Promise((resolve) => {
 		const probe = createServer();
-		probe.once('error', () => resolve(false));
-		probe.listen({ host, port, exclusive: true }, () => probe.close(() => resolve(true)));
+		probe.once('error', (error) => resolve(codeOf(error)));
+		probe.listen({ host, port, exclusive: true }, () => probe.close(() => resolve(null)));
 	});
 }
 
@@ -141,22 +142,6 @@ export function freePort() {
 			const port = typeof address === 'object' && address ? address.port : 0;
 			probe.close(() => resolve(port));
 		});
-	});
-}
-
-/**
- * @param {string} host
- * @param {number} port
- * @returns {Promise<boolean>}
- */
-export function accepts(host, port) {
-	return new Promise((resolve) => {
-		const socket = createConnection({ host, port });
-		socket.once('connect', () => {
-			socket.destroy();
-			resolve(true);
-		});
-		socket.once('error', () => resolve(false));
 	});
 }
 

@@ -11,7 +11,7 @@ import {
 	surroundings
 } from './environment.js';
 import { Mendable, makeFolder, root } from './place.js';
-import { endProcess, firstMessage, isPortFree, startProcess } from './processes.js';
+import { endProcess, firstMessage, portTrouble, startProcess } from './processes.js';
 
 /**
  * The services that the application needs and this machine does not have: each is started only if nothing is set for it.
@@ -119,7 +119,7 @@ async function startStore(services, { home, given, throwAway, onStart }) {
  */
 async function startMail(services, { home, given, pagePort, onStart }) {
 	if (hasOwnMail(given)) return;
-	const wished = pagePort > 0 && (await isPortFree('127.0.0.1', pagePort)) ? pagePort : 0;
+	const wished = pagePort > 0 && (await portTrouble('127.0.0.1', pagePort)) === null ? pagePort : 0;
 	const log = logOf(home, 'mail-catcher');
 	const mail = await startMailCatcher(path.join(home, 'mail'), log, services.env, wished, onStart);
 	services.env.SMTP_URL = mail.smtpUrl;

@@ -1,5 +1,6 @@
 import path from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
+import { DEMO_CUSTOMERS, DEMO_PASSWORD, DEMO_STAFF, wantsDemo } from './demo.js';
 import { webSettings } from './environment.js';
 import { endLeftovers, forgetRunState, takeLauncherPlace, writeRunState } from './launcher-state.js';
 import { watchForErrors } from './log-watch.js';
@@ -8,9 +9,9 @@ import { checkNode, ensureBuild, ensurePackages, runToEnd } from './prepare.js';
 import {
 	endProcess,
 	isAlive,
-	isPortFree,
 	lastLines,
 	markOf,
+	portTrouble,
 	startProcess,
 	whenNpmIsGone
 } from './processes.js';
@@ -86,8 +87,8 @@ function stop(code) {
 	stopping ??= (async () => {
 		if (!giveUpPlace) process.exit(code);
 		if (own.length + serviceProcesses.length) console.log('Stopping …');
-		// Whoever uses a service goes before it, and may finish what it is at.
-		for (const one of [...own].reverse()) await endProcess(one, 'SIGTERM', 12_000);
+		// Whoever uses the services goes first, and may finish what it is at.
+		await Promise.all(own.map((one) => endProcess(one, 'SIGTERM', 12_000)));
 		await stopServices(serviceProcesses);
 		forgetRunState();
 		giveUpPlace();
@@ -106,7 +107,7 @@ async function waitForHealth() {
 	const host = ['0.0.0.0', '::'].includes(web.HOST) ? '127.0.0.1' : web.HOST;
 	const at = `http://${host.includes(':') ? `[${host}]` : host}:${web.PORT}/api/v1/health`;
 	let said = 'no answer';
-	for (const until = performance.now() + 60_000; performance.now() < until && !stopping; await sleep(100)) {
+	for (const until = performance.now() + 120_000; performance.now() < until && !stopping; await sleep(100)) {
 		try {
 			const response = await fetch(at, { signal: AbortSignal.timeout(5_000) });
 			said = `${response.status} ${await response.text()}`;
@@ -117,7 +118,7 @@ async function waitForHealth() {
 	}
 	if (!stopping)
 		throw new Mendable(
-			`The web server did not become healthy in a minute (${said}). Its logs are in ${localFolder}/log.`
+			`The web server did not become healthy in two minutes (${said}). Its logs are in ${localFolder}/log.`
 		);
 }
 
@@ -138,13 +139,15 @@ function startSeed(cluster) {
 	});
 }
 
-async function startApplication() {
+/** @param {import('./cluster.js').Cluster | null} cluster null: someone else's database, which gets no demo */
+async function startApplication(cluster) {
 	const env = { ...state.env, ...web };
 	const migrated = await runToEnd([process.execPath, '--import', 'tsx', 'src/migrate.ts'], env);
 	if (migrated.code !== 0)
 		throw new Mendable(`The database could not be migrated:\n${migrated.output.trim()}`);
 	console.log(migrated.output.trim());
 	if (stopping) return;
+	if (cluster && !cluster.kept.seeded && wantsDemo(process.env)) startSeed(cluster);
 	watch(startOwn('worker', ['--import', 'tsx', 'src/worker.ts'], env));
 	watch(startOwn('web server', ['build/index.js'], env));
 	await waitForHealth();
@@ -153,13 +156,28 @@ async function startApplication() {
 /** @param {boolean} isDemo */
 function greet(isDemo) {
 	const lines = [`Trunnion runs at ${web.ORIGIN}`];
-	if (state.mailPage) lines.push(`Mail that it sends is caught and shown at ${state.mailPage}`);
 	if (isDemo)
 		lines.push(
-			'Demo sign-ins: admin@fellmoor.example, manager@…, engineer@…, builder@…, operator@…; the README has the password and the clients.'
+			`Demo sign-ins, all with the password "${DEMO_PASSWORD}":`,
+			`  staff      ${DEMO_STAFF.join(' ')}`,
+			`  customers  ${DEMO_CUSTOMERS.join(' ')}`
 		);
+	if (state.mailPage) lines.push(`Mail that it sends is caught and shown at ${state.mailPage}`);
 	lines.push('Ctrl-C stops everything.');
 	console.log(`\n${lines.join('\n')}\n`);
+}
+
+async function checkPort() {
+	const port = Number(web.PORT);
+	if (!Number.isInteger(port) || port < 1 || port > 65_534)
+		throw new Mendable(`PORT must be a whole number from 1 to 65534, not "${web.PORT}".`);
+	const trouble = await portTrouble(web.HOST, port);
+	const another = `choose another port: PORT=${port < 60_000 ? port + 2 : 5180} npm start`;
+	if (trouble === 'EADDRINUSE')
+		throw new Mendable(`Port ${port} on ${web.HOST} is in use by another program. End that, or ${another}`);
+	if (trouble === 'EACCES') throw new Mendable(`This user may not listen on port ${port}; ${another}`);
+	if (trouble)
+		throw new Mendable(`HOST=${web.HOST} is no address of this machine (${trouble}); leave HOST away.`);
 }
 
 async function main() {
@@ -168,10 +186,7 @@ async function main() {
 	makeFolder(localFolder);
 	giveUpPlace = takeLauncherPlace();
 	await endLeftovers();
-	if (!servicesOnly && !(await isPortFree(web.HOST, Number(web.PORT))))
-		throw new Mendable(
-			`Port ${web.PORT} on ${web.HOST} is in use by another program. End that, or choose another port: PORT=${Number(web.PORT) + 2} npm start`
-		);
+	if (!servicesOnly) await checkPort();
 	await ensurePackages();
 	if (!servicesOnly) await ensureBuild();
 	if (stopping) return;
@@ -189,15 +204,14 @@ async function main() {
 	Object.assign(state, { mailPage: services.mailPage, env: { ...services.env, ...web } });
 	writeRunState(state);
 	if (stopping) return;
-	if (!servicesOnly) await startApplication();
+	if (!servicesOnly) await startApplication(services.cluster);
 	if (stopping) return;
 	state.ready = true;
 	writeRunState(state);
 	if (servicesOnly)
 		console.log(`Services run; their addresses are in ${localFolder}/run.json. Ctrl-C stops them.`);
-	else greet(services.cluster !== null);
+	else greet(services.cluster !== null && wantsDemo(process.env));
 	console.log(`Started in ${((performance.now() - began) / 1000).toFixed(1)} s.`);
-	if (!servicesOnly && services.cluster && !services.cluster.kept.seeded) startSeed(services.cluster);
 }
 
 for (const signal of /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP']))
