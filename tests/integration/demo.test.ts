@@ -218,7 +218,12 @@ describe('a seed that was cut off', () => {
 	it('does not run beside another one', async () => {
 		const other = openDeps(readConfig(whole.env), 2);
 		let beside: Promise<string> | undefined;
-		await seedDemoLab(deps, { say: () => (beside ??= seedDemoLab(other)), patienceMs: 0 });
+		await seedDemoLab(deps, {
+			say: () => {
+				beside ??= seedDemoLab(other);
+			},
+			patienceMs: 0
+		});
 		expect(await beside).toBe('busy');
 		await closeDeps(other);
 	});
