@@ -12,7 +12,7 @@ import type { Problem } from '../../src/lib/server/problem';
 import { useDatabase } from '../setup/database';
 
 /** Monday of a quiet week; every test's clock stands here unless it sets another. */
-export const MONDAY = new Date('2027-03-01T06:00:00Z');
+const MONDAY = new Date('2027-03-01T06:00:00Z');
 export const ZONE = 'Europe/Stockholm';
 
 const HOUR_MS = 3_600_000;

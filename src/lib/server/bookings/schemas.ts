@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { RUN_KINDS } from '$lib/domain/model';
 import { fields, PageQuery } from '../api';
 
-export const BOOKING_STATES = ['requested', 'confirmed', 'declined', 'cancelled', 'done'] as const;
+const BOOKING_STATES = ['requested', 'confirmed', 'declined', 'cancelled', 'done'] as const;
 
 export const NewBooking = z.object({
 	client: fields.ref.optional(),

@@ -55,7 +55,7 @@ export const ScheduleView = z.object({
 export type Schedule = z.input<typeof ScheduleView>;
 
 const WEEKS_AHEAD = 13;
-export const LONGEST_SEARCH_DAYS = WEEKS_AHEAD * 7 + 1;
+const LONGEST_SEARCH_DAYS = WEEKS_AHEAD * 7 + 1;
 
 export const FirstFitWish = z
 	.object({
