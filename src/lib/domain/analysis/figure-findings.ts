@@ -3,6 +3,7 @@ import { brakePowerKw } from '../formulas/performance';
 import type { Reduced } from '../reduction/reduced';
 import { median, quantile } from '../statistics/moments';
 import { figure, spansWhere } from '../trace/spans';
+import { thinned } from '../trace/spikes';
 import { columnOf, type Trace } from '../trace/trace';
 import { suggestFuelUnit } from './fuel-unit';
 
@@ -22,13 +23,7 @@ function underLoad(trace: Trace, reduced: Reduced): Values {
 		return { bte: of('bte'), lambda_flow: of('lambda_flow'), lambda_sensor: of('lambda_sensor') };
 	}
 	const power = columnOf(trace, 'power')?.values;
-	const limit = power
-		? 0.5 *
-			quantile(
-				power.filter((_, i) => i % Math.ceil(power.length / 5000) === 0),
-				0.98
-			)
-		: 0;
+	const limit = power ? 0.5 * quantile(thinned(power), 0.98) : 0;
 	const rows: number[] = [];
 	const stride = Math.max(1, Math.floor(trace.rows / 50_000));
 	for (let i = 0; i < trace.rows; i += stride) if (!power || power[i]! > limit) rows.push(i);
@@ -99,7 +94,7 @@ function powerFindings(trace: Trace): Finding[] {
 	const power = columnOf(trace, 'power');
 	const [speed, torque] = [columnOf(trace, 'speed')?.values, columnOf(trace, 'torque')];
 	if (!power || power.index === null || !speed || !torque || torque.index === null) return [];
-	const limit = 0.2 * quantile(power.values, 0.98);
+	const limit = 0.2 * quantile(thinned(power.values), 0.98);
 	const ratios: number[] = [];
 	const stride = Math.max(1, Math.floor(trace.rows / 20_000));
 	for (let i = 0; i < trace.rows; i += stride)
@@ -121,12 +116,7 @@ function fuelFindings(trace: Trace, spikes: ReadonlyMap<string, readonly number[
 	const fuel = columnOf(trace, 'fuel_flow')?.values;
 	const torque = columnOf(trace, 'torque')?.values;
 	if (!fuel || !torque) return [];
-	const limit =
-		0.1 *
-		quantile(
-			torque.filter((_, i) => i % Math.ceil(torque.length / 5000) === 0),
-			0.98
-		);
+	const limit = 0.1 * quantile(thinned(torque), 0.98);
 	if (!(limit > 0)) return [];
 	const left = new Set([...(spikes.get('fuel_flow') ?? []), ...(spikes.get('torque') ?? [])]);
 	const bad = (i: number) => torque[i]! > limit && fuel[i]! <= 0 && !left.has(i);

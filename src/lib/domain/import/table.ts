@@ -67,8 +67,8 @@ export class TableBuilder {
 	readonly #layout: Layout;
 	readonly #dialect: Dialect;
 	readonly #fill: Filling[];
-	#capacity = 1024;
-	#rowNumbers = new Uint32Array(this.#capacity);
+	#capacity: number;
+	#rowNumbers: Uint32Array;
 	#rows = 0;
 	#record = 0;
 	#lastWidth = 0;
@@ -86,9 +86,12 @@ export class TableBuilder {
 	};
 	#secondTableRow: number | null = null;
 
-	constructor(layout: Layout, dialect: Dialect) {
+	/** @param expectedRows about how many rows will come; any number does, a good one saves copying */
+	constructor(layout: Layout, dialect: Dialect, expectedRows = 1024) {
 		this.#layout = layout;
 		this.#dialect = dialect;
+		this.#capacity = Math.max(16, Math.ceil(expectedRows));
+		this.#rowNumbers = new Uint32Array(this.#capacity);
 		this.#fill = layout.headers.map(() => ({
 			values: new Float64Array(this.#capacity),
 			blanks: 0,
@@ -228,7 +231,7 @@ export class TableBuilder {
 	}
 
 	#grow(): void {
-		this.#capacity *= 2;
+		this.#capacity = Math.ceil(this.#capacity * 1.5);
 		const rowNumbers = new Uint32Array(this.#capacity);
 		rowNumbers.set(this.#rowNumbers);
 		this.#rowNumbers = rowNumbers;
@@ -253,7 +256,7 @@ export class TableBuilder {
 		return {
 			columns: columns.filter((column) => column.numbers + column.texts > 0 || this.#isNamed(column)),
 			rows: this.#rows,
-			rowNumbers: this.#rowNumbers.slice(0, this.#rows),
+			rowNumbers: this.#rowNumbers.subarray(0, this.#rows),
 			...this.#seen,
 			cutRow,
 			secondTableRow: this.#secondTableRow
@@ -274,7 +277,7 @@ export class TableBuilder {
 	}
 
 	#column(fill: Filling, index: number): TableColumn {
-		const values = fill.values.slice(0, this.#rows);
+		const values = fill.values.subarray(0, this.#rows);
 		const reach = Math.max(fill.hi - fill.lo, 0.1 * Math.abs(fill.hi));
 		for (const [sentinel, count] of fill.sentinels) {
 			const apart =

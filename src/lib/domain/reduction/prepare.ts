@@ -10,9 +10,11 @@ const LONGEST_GAP_STEPS = 5;
 
 /** Straight lines between the known samples of a sparse channel, not across holes of its own. */
 export function joinSparse(time: Float64Array, values: Float64Array): Float64Array {
+	let count = 0;
+	for (let i = 0; i < values.length; i++) if (values[i] === values[i]) count++;
+	if (count < LEAST_SAMPLES || count > SPARSE_SHARE * values.length) return values;
 	const known: number[] = [];
-	for (let i = 0; i < values.length; i++) if (!Number.isNaN(values[i]!)) known.push(i);
-	if (known.length < LEAST_SAMPLES || known.length > SPARSE_SHARE * values.length) return values;
+	for (let i = 0; i < values.length; i++) if (values[i] === values[i]) known.push(i);
 	const step = medianStep(Float64Array.from(known, (row) => time[row]!));
 	const joined = Float64Array.from(values);
 	for (let k = 1; k < known.length; k++) {

@@ -2,6 +2,7 @@ import { quantile } from '../statistics/moments';
 import type { Finding, RunContext } from '../model';
 import { derive } from '../trace/derive';
 import { figure } from '../trace/spans';
+import { thinned } from '../trace/spikes';
 import { binBySpeed, defaultBinWidth } from './bins';
 import { correct, correctedMetrics } from './corrected';
 import { curveMetrics } from './curve-metrics';
@@ -77,7 +78,7 @@ function chooseRamps(
 
 /** Samples of the ramps at full load: throttle at or above the share of its highest; without a throttle channel every one. */
 function fullLoadRows(ramps: readonly Ramp[], throttle: Float64Array | undefined, share: number): number[] {
-	const limit = throttle ? share * quantile(throttle, 0.995) : 0;
+	const limit = throttle ? share * quantile(thinned(throttle), 0.995) : 0;
 	const rows: number[] = [];
 	for (const { from, to } of ramps)
 		for (let i = from; i < to; i++) if (!throttle || throttle[i]! >= limit) rows.push(i);

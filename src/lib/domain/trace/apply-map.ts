@@ -15,12 +15,18 @@ export interface Applied {
 	medianStepS: number;
 }
 
+/** A copy in the order of the clock; null keeps the file's. */
+function inOrder(source: Float64Array, order: Uint32Array | null): Float64Array {
+	if (!order) return source.slice();
+	const values = new Float64Array(order.length);
+	for (let i = 0; i < order.length; i++) values[i] = source[order[i]!]!;
+	return values;
+}
+
 /** The file's numbers in the kept unit, in the order of the clock. */
 function converted(mapped: MappedColumn, order: Uint32Array | null): Float64Array {
 	const { source, channel, unit } = mapped;
-	const values = order
-		? Float64Array.from(order, (row) => source.values[row]!)
-		: Float64Array.from(source.values);
+	const values = inOrder(source.values, order);
 	const kept = channel === null ? null : parseUnit(channelOf(channel)?.unit);
 	const convert = unit && kept ? converter(unit, kept) : null;
 	if (!convert || unit?.unit === kept?.unit) return values;
@@ -110,12 +116,13 @@ export function applyMap(table: Table, columns: readonly MappedColumn[], ambient
 			)
 		: null;
 	const time = clock?.time ?? null;
+	const order = clock?.order ?? null;
 	const findings: Finding[] = [...(clock?.findings ?? [])];
 	const taken = new Set(columns.flatMap((mapped) => (mapped.channel === null ? [] : [mapped.channel])));
 	const pairs: (readonly [MappedColumn, TraceColumn])[] = [];
 	for (const mapped of columns) {
 		if (mapped === clockColumn || mapped.source.numbers === 0) continue;
-		let values = converted(mapped, clock?.order ?? null);
+		let values = converted(mapped, order);
 		if (mapped.delayS !== 0 && time) values = delayed(time, values, mapped.delayS);
 		const code = mapped.channel ?? ownCode(mapped.source.header, taken);
 		taken.add(code);
@@ -134,7 +141,6 @@ export function applyMap(table: Table, columns: readonly MappedColumn[], ambient
 	}
 	const pressures = makeAbsolute(pairs, ambient);
 	for (const column of pressures.left) column.code = ownCode(column.header, taken);
-	const { order } = clock ?? {};
 	return {
 		trace: {
 			time,

@@ -4,8 +4,8 @@ import { medianStep, unwrap, type ClockForm } from '../import/time';
 export interface Clock {
 	/** s from trace start, never falling. */
 	time: Float64Array;
-	/** Rows of the table in the order of the clock; rows without a stamp are left out. */
-	order: Uint32Array;
+	/** Rows of the table in the order of the clock, rows without a stamp left out; null where that is the file's own order. */
+	order: Uint32Array | null;
 	findings: Finding[];
 	medianStepS: number;
 }
@@ -43,7 +43,8 @@ function straighten(
 	order: Uint32Array,
 	step: number
 ): { time: Float64Array; order: Uint32Array; findings: Finding[] } {
-	const time = Float64Array.from(order, (row) => raw[row]!);
+	const time = new Float64Array(order.length);
+	for (let i = 0; i < order.length; i++) time[i] = raw[order[i]!]!;
 	const findings: Finding[] = [];
 	const back: number[] = [];
 	for (let i = 1; i < time.length; i++) if (time[i]! < time[i - 1]!) back.push(i);
@@ -136,7 +137,7 @@ function gaps(time: Float64Array, step: number): Finding[] {
  * @param form how the stamps are written; wraps past midnight are taken out
  */
 export function makeClock(values: Float64Array, form: 'number' | ClockForm): Clock {
-	const raw = Float64Array.from(values);
+	const raw = values.slice();
 	const findings: Finding[] = [];
 	const wraps = form === 'number' ? 0 : unwrap(raw, form);
 	if (wraps > 0)
@@ -147,7 +148,8 @@ export function makeClock(values: Float64Array, form: 'number' | ClockForm): Clo
 			spans: [],
 			channel: 'time'
 		});
-	let order: Uint32Array = Uint32Array.from(raw.keys());
+	let order = new Uint32Array(raw.length);
+	for (let i = 0; i < raw.length; i++) order[i] = i;
 	if (raw.some((value) => Number.isNaN(value))) {
 		order = order.filter((row) => !Number.isNaN(raw[row]!));
 		findings.push({
@@ -174,7 +176,7 @@ export function makeClock(values: Float64Array, form: 'number' | ClockForm): Clo
 	const step = medianStep(time);
 	return {
 		time,
-		order: straight.order,
+		order: straight.findings.length === 0 && order.length === raw.length ? null : straight.order,
 		findings: [...findings, ...straight.findings, ...repeatedStamps(time), ...gaps(time, step)],
 		medianStepS: step
 	};

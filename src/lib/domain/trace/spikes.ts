@@ -12,7 +12,8 @@ const LEAST_SHARE_OF_RANGE = 0.02;
 /** At most this many values are looked at for a scale. */
 const SCALE_SAMPLES = 5000;
 
-function thinned(values: ArrayLike<number>): number[] {
+/** Some thousands of the values, evenly taken: enough for a quantile, whatever the size of the trace. */
+export function thinned(values: ArrayLike<number>): number[] {
 	const stride = Math.max(1, Math.floor(values.length / SCALE_SAMPLES));
 	const out: number[] = [];
 	for (let i = 0; i < values.length; i += stride) out.push(values[i]!);
@@ -28,11 +29,10 @@ function thinned(values: ArrayLike<number>): number[] {
  * @param values one per row; NaN rows are skipped, so that a sparse channel is judged on its own samples
  */
 export function findSpikes(values: Float64Array): number[] {
-	const rows: number[] = [];
-	for (let i = 0; i < values.length; i++) if (!Number.isNaN(values[i]!)) rows.push(i);
-	const n = rows.length;
+	const rows = knownRows(values);
+	const n = rows?.length ?? values.length;
 	if (n < 4 * REACH) return [];
-	const known = n === values.length ? values : Float64Array.from(rows, (row) => values[row]!);
+	const known = rows ? rows.map((row) => values[row]!) : values;
 	const distance = (i: number) => {
 		// At the ends the middle of the nearest samples stands in for the side that is not there.
 		const before = known[Math.max(i - REACH, i < REACH ? Math.min(i + 2, n - 1) : 0)]!;
@@ -59,7 +59,17 @@ export function findSpikes(values: Float64Array): number[] {
 		const window = known.subarray(from, Math.min(n, i + HALF_WIDTH + 1));
 		if (hampelSpikes(window, HALF_WIDTH, HAMPEL_SD, floor)[i - from]) spikes.push(i);
 	}
-	return shortRuns(spikes).map((i) => rows[i]!);
+	return shortRuns(spikes).map((i) => (rows ? rows[i]! : i));
+}
+
+/** Rows that hold a value; null where all do, the usual case. */
+function knownRows(values: Float64Array): Float64Array | null {
+	let known = 0;
+	for (let i = 0; i < values.length; i++) if (values[i] === values[i]) known++;
+	if (known === values.length) return null;
+	const rows = new Float64Array(known);
+	for (let i = 0, k = 0; i < values.length; i++) if (values[i] === values[i]) rows[k++] = i;
+	return rows;
 }
 
 /** A longer run is an event of the engine, not a fault of one sample. */

@@ -1,5 +1,4 @@
 import type { Finding } from '../model';
-import { quantile } from '../statistics/moments';
 import { atS, figure } from './spans';
 import type { TraceColumn } from './trace';
 
@@ -10,23 +9,63 @@ interface Run {
 	length: number;
 }
 
-/** Stretches of one and the same value over the known samples. */
-function runsOf(values: Float64Array): Run[] {
-	const runs: Run[] = [];
-	let current: Run | null = null;
+/** Stretches of one and the same value over the known samples, told by their lengths; only long ones are kept whole. */
+interface Runs {
+	count: number;
+	/** How many stretches have each length up to `LENGTHS`; longer ones are counted with the last. */
+	lengths: Uint32Array;
+	longest: Run;
+	long: Run[];
+	lo: number;
+	hi: number;
+}
+
+const LENGTHS = 4096;
+const LONG = 10;
+const MOST_LONG = 10_000;
+
+function runsOf(values: Float64Array): Runs | null {
+	const runs: Runs = {
+		count: 0,
+		lengths: new Uint32Array(LENGTHS + 1),
+		longest: { from: 0, to: 0, value: NaN, length: 0 },
+		long: [],
+		lo: Infinity,
+		hi: -Infinity
+	};
+	let [from, last, length, value] = [-1, -1, 0, NaN];
+	const close = () => {
+		runs.count++;
+		runs.lengths[Math.min(length, LENGTHS)]!++;
+		if (value < runs.lo) runs.lo = value;
+		if (value > runs.hi) runs.hi = value;
+		if (length > runs.longest.length) runs.longest = { from, to: last, value, length };
+		if (length >= LONG && runs.long.length < MOST_LONG) runs.long.push({ from, to: last, value, length });
+	};
 	for (let i = 0; i < values.length; i++) {
-		const value = values[i]!;
-		if (Number.isNaN(value)) continue;
-		if (current && value === current.value) {
-			current.to = i;
-			current.length++;
-		} else {
-			if (current) runs.push(current);
-			current = { from: i, to: i, value, length: 1 };
+		const next = values[i]!;
+		if (next !== next) continue;
+		if (next !== value) {
+			if (length > 0) close();
+			from = i;
+			length = 0;
+			value = next;
 		}
+		last = i;
+		length++;
 	}
-	if (current) runs.push(current);
-	return runs;
+	if (length > 0) close();
+	return runs.count > 0 ? runs : null;
+}
+
+/** Length that the given share of the stretches, the longest left out, does not exceed. */
+function lengthAt({ lengths, count, longest }: Runs, share: number): number {
+	let left = share * (count - 1);
+	for (let length = 1; length <= LENGTHS; length++) {
+		left -= lengths[length]! - (Math.min(longest.length, LENGTHS) === length ? 1 : 0);
+		if (left <= 0) return length;
+	}
+	return LENGTHS;
 }
 
 /** Settings and slow room conditions stand still by nature; a full throttle is at its stop. */
@@ -43,12 +82,11 @@ const LEAST_SAMPLES = 25;
 export function stuckFindings(column: TraceColumn, time: Float64Array): Finding[] {
 	if (MAY_STAND.test(column.code)) return [];
 	const runs = runsOf(column.values);
-	if (runs.length < 30) return [];
-	const longest = runs.reduce((a, b) => (b.length > a.length ? b : a));
-	const others = runs.filter((run) => run !== longest).map((run) => run.length);
-	const usual = quantile(others, 0.5);
+	if (!runs || runs.count < 30) return [];
+	const { longest } = runs;
+	const usual = lengthAt(runs, 0.5);
 	const held = time[longest.to]! - time[longest.from]!;
-	if (longest.length >= Math.max(LEAST_SAMPLES, 20 * usual, 6 * quantile(others, 0.98)) && held >= LEAST_S)
+	if (longest.length >= Math.max(LEAST_SAMPLES, 20 * usual, 6 * lengthAt(runs, 0.98)) && held >= LEAST_S)
 		return [
 			{
 				code: 'stuck',
@@ -61,15 +99,9 @@ export function stuckFindings(column: TraceColumn, time: Float64Array): Finding[
 	return usual > 1 ? [] : clipped(column, runs, time);
 }
 
-function clipped(column: TraceColumn, runs: readonly Run[], time: Float64Array): Finding[] {
-	let lo = Infinity;
-	let hi = -Infinity;
-	for (const run of runs) {
-		lo = Math.min(lo, run.value);
-		hi = Math.max(hi, run.value);
-	}
-	for (const end of [hi, lo]) {
-		const at = runs.filter((run) => run.value === end && run.length >= 10);
+function clipped(column: TraceColumn, runs: Runs, time: Float64Array): Finding[] {
+	for (const end of [runs.hi, runs.lo]) {
+		const at = runs.long.filter((run) => run.value === end);
 		if (at.length < 2) continue;
 		return [
 			{
