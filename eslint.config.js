@@ -144,6 +144,8 @@ export default ts.config(
 		rules: {
 			'house/one-way-imports': 'error',
 			eqeqeq: ['error', 'always', { null: 'ignore' }],
+			// Vitest's hooks insist on a destructured first argument.
+			'no-empty-pattern': ['error', { allowObjectPatternsAsParameters: true }],
 			'max-lines': ['error', { max: 400, skipBlankLines: true }],
 			'no-undef': 'off',
 			'@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_' }],

@@ -65,7 +65,7 @@ export function useDatabase(): TestDatabase {
 	beforeAll(async () => {
 		made = await createDatabase();
 	});
-	afterAll(async (_context, suite) => {
+	afterAll(async ({}, suite) => {
 		if (hasFailed(suite))
 			console.error(`The database of the failed tests is kept while the run lasts: ${made?.name}`);
 		else await made?.drop();

@@ -130,7 +130,7 @@ export function useStack(extra: Record<string, string> = {}): { readonly current
 	beforeAll(async () => {
 		made = await startStack(extra);
 	});
-	afterAll(async (_context, suite) => {
+	afterAll(async ({}, suite) => {
 		await made?.stop();
 		if (!hasFailed(suite)) await made?.database.drop();
 	});

@@ -74,6 +74,7 @@ async function ask(
 		method: form ? 'POST' : 'GET',
 		redirect: 'manual',
 		headers: {
+			accept: 'text/html',
 			...(cookie ? { cookie } : {}),
 			...(form
 				? {
@@ -95,7 +96,11 @@ async function signIn(email: string): Promise<string> {
 	const response = await fetch(`${stack.current.origin}/sign-in`, {
 		method: 'POST',
 		redirect: 'manual',
-		headers: { origin: stack.current.origin, 'content-type': 'application/x-www-form-urlencoded' },
+		headers: {
+			origin: stack.current.origin,
+			accept: 'text/html',
+			'content-type': 'application/x-www-form-urlencoded'
+		},
 		body: new URLSearchParams({ email, password: PASSWORD }).toString()
 	});
 	const cookie = response.headers.get('set-cookie')?.split(';')[0];
