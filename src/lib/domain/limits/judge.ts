@@ -15,32 +15,47 @@ export interface Judged {
 /** A rule's subject over the trace, or why there is none. */
 type Subject = { values: Float64Array; name: string; unit: string } | { reason: string };
 
+type Table = readonly (readonly [x: number, y: number])[];
+
 /** Straight lines between the points of a limit table, held constant past its ends; points in any order. */
-export function tableValue(table: readonly (readonly [number, number])[], x: number): number {
+function limitOver(table: Table): (x: number) => number {
 	const points = [...table].sort((a, b) => a[0] - b[0]);
-	const first = points[0];
-	if (!first || Number.isNaN(x)) return NaN;
-	if (x <= first[0]) return first[1];
-	for (let k = 1; k < points.length; k++) {
-		const [x1, y1] = points[k]!;
+	const [first, last] = [points[0], points.at(-1)];
+	if (!first || !last) return () => NaN;
+	return (x) => {
+		if (!(x > first[0])) return Number.isNaN(x) ? NaN : first[1];
+		if (x >= last[0]) return last[1];
+		let k = 1;
+		while (points[k]![0] < x) k++;
 		const [x0, y0] = points[k - 1]!;
-		if (x <= x1) return x1 === x0 ? y1 : y0 + ((x - x0) / (x1 - x0)) * (y1 - y0);
-	}
-	return points.at(-1)![1];
+		const [x1, y1] = points[k]!;
+		return y0 + ((x - x0) / (x1 - x0)) * (y1 - y0);
+	};
 }
+
+/** The limit of a table at one value of its axis: straight lines between the points, held constant past the ends. */
+export const tableValue = (table: Table, x: number): number => limitOver(table)(x);
 
 interface Bounds {
 	lo: number;
 	hi: number;
 }
 
-/** The allowed range by a rule's relation and limit at one value of the table's axis; null where the two do not fit together. */
-function bounds(relation: Relation, limit: RuleLimit, over: number): Bounds | null {
-	if (Array.isArray(limit))
-		return relation === 'between' ? { lo: Math.min(...limit), hi: Math.max(...limit) } : null;
+/** A rule's allowed range as a function of its table's axis; null where relation and form of the limit do not go together. */
+function boundsOf(relation: Relation, limit: RuleLimit): ((over: number) => Bounds) | null {
+	if (Array.isArray(limit)) {
+		const fixed = { lo: Math.min(...limit), hi: Math.max(...limit) };
+		return relation === 'between' ? () => fixed : null;
+	}
 	if (relation === 'between') return null;
-	const value = typeof limit === 'number' ? limit : tableValue(limit.table, over);
-	return relation === 'at_most' ? { lo: -Infinity, hi: value } : { lo: value, hi: Infinity };
+	const one = (value: number): Bounds =>
+		relation === 'at_most' ? { lo: -Infinity, hi: value } : { lo: value, hi: Infinity };
+	if (typeof limit === 'number') {
+		const fixed = one(limit);
+		return () => fixed;
+	}
+	const value = limitOver(limit.table);
+	return (over) => one(value(over));
 }
 
 function subjectOf(rule: Rule, trace: Trace): Subject {
@@ -111,10 +126,9 @@ function judgeTrace(rule: Rule, trace: Trace): Flag | null | { reason: string } 
 	const axis = over === null ? null : over === 'time' ? trace.time : columnOf(trace, over)?.values;
 	if (over !== null && !axis)
 		return { reason: `the trace has no channel ${over}, over which the limit is given` };
-	if (bounds(rule.relation, limit, 0) === null)
-		return { reason: `a limit of this form does not go with “${rule.relation}”` };
-	const constant = over === null ? bounds(rule.relation, limit, 0)! : null;
-	const at = (row: number) => constant ?? bounds(rule.relation, limit, axis![row]!)!;
+	const bounds = boundsOf(rule.relation, limit);
+	if (!bounds) return { reason: `a limit of this form does not go with “${rule.relation}”` };
+	const at = (row: number) => bounds(axis ? axis[row]! : NaN);
 	const state = new Int8Array(trace.rows).fill(-1);
 	let known = 0;
 	for (let row = 0; row < trace.rows; row++) {
@@ -159,8 +173,8 @@ function judgeValue(
 	over: number,
 	at: number | null
 ): Flag | null | { reason: string } {
-	const range = bounds(rule.relation, rule.limit, over);
-	if (range === null) return { reason: `a limit of this form does not go with “${rule.relation}”` };
+	const range = boundsOf(rule.relation, rule.limit)?.(over);
+	if (!range) return { reason: `a limit of this form does not go with “${rule.relation}”` };
 	if (Number.isNaN(range.lo) || Number.isNaN(range.hi))
 		return { reason: 'its limit is given over a channel that the figure has no value of' };
 	const outside = excessOf(value, range);
