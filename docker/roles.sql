@@ -4,6 +4,7 @@
 -- or give each login its own afterwards (alter role … password …) and set DATABASE_URL_OWNER, _LAB, _CLIENT, _AUTH, _QUEUE.
 
 \set ON_ERROR_STOP on
+set client_min_messages = warning;
 
 select format('create role %I', name)
 from unnest(array['trunnion_owner', 'trunnion_lab', 'trunnion_client', 'trunnion_auth', 'trunnion_queue', 'trunnion_taken']) as name

@@ -16,6 +16,7 @@ import path from 'node:path';
 import { promisify } from 'node:util';
 import { postgresPrograms, serverUser } from './debian.js';
 import { Mendable, readJson, textOf, writeSecretJson } from './place.js';
+import { endingWithUs } from './processes.js';
 import { LOGINS } from './roles.js';
 
 /**
@@ -54,10 +55,8 @@ export const clusterExists = (home) => readKept(home)?.complete === true;
  * @param {string[]} command
  */
 function asServer(command) {
-	const user = serverUser();
-	const prefix = ['--pdeathsig', 'KILL'];
-	if (user) prefix.push(`--reuid=${user.uid}`, `--regid=${user.gid}`, '--init-groups');
-	return run('setpriv', [...prefix, ...command], { cwd: '/', env: { ...process.env, LC_ALL: 'C.UTF-8' } });
+	const [file = '', ...args] = endingWithUs(command, 'KILL', serverUser());
+	return run(file, args, { cwd: '/', env: { ...process.env, LC_ALL: 'C.UTF-8' } });
 }
 
 /**

@@ -4,6 +4,7 @@ import { existsSync, readFileSync, readdirSync, rmSync, writeFileSync } from 'no
 import path from 'node:path';
 import { readText } from './launcher-state.js';
 import { Mendable, localFolder, root } from './place.js';
+import { endingWithUs } from './processes.js';
 
 /** What must be there before anything of the application can run: a fitting Node.js, the packages, the built web server. */
 
@@ -16,14 +17,15 @@ export function checkNode() {
 }
 
 /**
- * Runs a command to its end.
+ * Runs a command to its end, or to ours.
  * @param {string[]} command
  * @param {NodeJS.ProcessEnv} [env]
  * @returns {Promise<{ code: number | null, output: string }>}
  */
 export function runToEnd(command, env = process.env) {
 	return new Promise((resolve, reject) => {
-		const child = spawn(command[0] ?? '', command.slice(1), {
+		const [file = '', ...args] = endingWithUs(command, 'KILL');
+		const child = spawn(file, args, {
 			cwd: root,
 			env,
 			stdio: ['ignore', 'pipe', 'pipe']

@@ -59,6 +59,18 @@ export async function endProcess(mark, signal, patienceMs) {
 }
 
 /**
+ * A command line whose process the kernel ends when this one is gone, however it went; run as another user where one is given.
+ * @param {string[]} command
+ * @param {'TERM' | 'INT' | 'KILL'} signal
+ * @param {{ uid: number, gid: number } | null} [user]
+ */
+export function endingWithUs(command, signal, user = null) {
+	const prefix = ['setpriv', '--pdeathsig', signal];
+	if (user) prefix.push(`--reuid=${user.uid}`, `--regid=${user.gid}`, '--init-groups');
+	return [...prefix, ...command];
+}
+
+/**
  * Starts a long-running process with its output in a log file. It stands in its own process group, so that Ctrl-C reaches
  * the launcher alone and the order of stopping is ours; the kernel ends it when the launcher is killed outright.
  * @param {string} name
@@ -69,9 +81,7 @@ export async function endProcess(mark, signal, patienceMs) {
  */
 export function startProcess(name, command, options) {
 	const { env, log, cwd, lastSignal = 'TERM', user = null, ipc = false } = options;
-	const prefix = ['setpriv', '--pdeathsig', lastSignal];
-	if (user) prefix.push(`--reuid=${user.uid}`, `--regid=${user.gid}`, '--init-groups');
-	const line = existsSync('/usr/bin/setpriv') ? [...prefix, ...command] : command;
+	const line = endingWithUs(command, lastSignal, user);
 	if (existsSync(log) && statSync(log).size > 10_000_000) renameSync(log, `${log}.1`);
 	const out = openSync(log, 'a', 0o600);
 	const child = spawn(line[0] ?? '', line.slice(1), {

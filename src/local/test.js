@@ -12,26 +12,36 @@ import { CHECKS, SUITES, endSteps, runStep, summary, vitest } from './test-steps
  * `npm test`: sets up all that the tests need, runs every check and suite, and ends what it started whatever happens.
  *
  * `--only STEP [file …]` runs one step (format, lint, types, "unused code", build, unit, integration, browser), and of a
- * suite only the files that match, with `--no-build` against the build that is there; `--long` runs the tests that count into the thousands in full (`TRUNNION_LONG=1`);
+ * suite only the files that match, with `--no-build` against the build that is there
+ * (what follows a second `--` goes to vitest as it is); `--long` runs the tests that count into the thousands in full (`TRUNNION_LONG=1`);
  * `--bench` runs tests/bench alone, which prints ratios.
  *
  * @typedef {import('./test-steps.js').Outcome} Outcome
  */
-const { values, positionals } = parseArgs({
-	allowPositionals: true,
-	options: {
-		only: { type: 'string' },
-		long: { type: 'boolean', default: false },
-		bench: { type: 'boolean', default: false },
-		'no-build': { type: 'boolean', default: false }
-	}
-});
+const { values, positionals } = readArguments();
 
 /** @type {import('./processes.js').Running[]} */
 const services = [];
 /** @type {Outcome[]} */
 const outcomes = [];
 let interrupted = false;
+
+function readArguments() {
+	try {
+		return parseArgs({
+			allowPositionals: true,
+			options: {
+				only: { type: 'string' },
+				long: { type: 'boolean', default: false },
+				bench: { type: 'boolean', default: false },
+				'no-build': { type: 'boolean', default: false }
+			}
+		});
+	} catch (error) {
+		console.error(textOf(error));
+		process.exit(2);
+	}
+}
 
 const STEPS = [...CHECKS.map(([name]) => name), 'build', ...SUITES, 'bench'];
 
@@ -102,7 +112,9 @@ async function runSuite(suite, folder, env) {
 	const live = values.bench || values.only !== undefined;
 	const limitMs = values.long || values.bench ? 4 * 3_600_000 : undefined;
 	const command = vitest(suite, filters, results);
-	outcomes.push(await runStep(suite, command, { env, live, limitMs, countsFrom: results }));
+	outcomes.push(
+		await runStep(suite, command, { env, live, limitMs, countsFrom: results, maySkip: filters.length > 0 })
+	);
 }
 
 /** @param {string} folder */
