@@ -8,6 +8,27 @@ import { hour, useBookingLab, ZONE } from './booking-lab';
 
 const lab = useBookingLab();
 const LIMIT_MS = 2000;
+const STATEMENTS = 12;
+
+/** What 50 transactions of as many bare statements take here and now: on a machine that is busy with other things, not 0.1 s. */
+async function bareMs(): Promise<number> {
+	const began = performance.now();
+	await Promise.all(
+		Array.from({ length: 50 }, () =>
+			lab.deps.pools.lab.transaction().execute(async (trx) => {
+				for (let i = 0; i < STATEMENTS; i++) await sql`select count(*) from occupancy`.execute(trx);
+			})
+		)
+	);
+	return performance.now() - began;
+}
+
+/** Two seconds; more only where the machine itself is that slow. */
+async function expectQuick(what: string, tookMs: number): Promise<void> {
+	const bare = await bareMs();
+	console.log(`${what}: ${tookMs.toFixed(0)} ms, ${(tookMs / bare).toFixed(1)} times the bare statements`);
+	expect(tookMs).toBeLessThan(Math.max(LIMIT_MS, 8 * bare));
+}
 
 interface Race {
 	won: Booking[];
@@ -65,7 +86,6 @@ describe('simultaneous confirmations', () => {
 		const { won, lost, tookMs } = await race(
 			asked.map((booking) => () => confirmBooking(lab.deps, manager, booking.id))
 		);
-		console.log(`50 confirmations of overlapping requests in one cell: ${tookMs.toFixed(0)} ms`);
 		expect(won).toHaveLength(1);
 		expect(lost).toHaveLength(49);
 		for (const problem of lost) {
@@ -74,7 +94,7 @@ describe('simultaneous confirmations', () => {
 			expect(problem.extra.clashesWith).toMatchObject([{ number: won[0]!.number, cell: cell.code }]);
 		}
 		expect([await overlaps(), await adrift()]).toEqual([0, 0]);
-		expect(tookMs).toBeLessThan(LIMIT_MS);
+		await expectQuick('50 confirmations of overlapping requests in one cell', tookMs);
 	});
 
 	it('of 50 requests of one build in two cells: one wins, 49 are told where it stands', async () => {
@@ -88,7 +108,6 @@ describe('simultaneous confirmations', () => {
 		const { won, lost, tookMs } = await race(
 			asked.map((booking) => () => confirmBooking(lab.deps, manager, booking.id))
 		);
-		console.log(`50 confirmations of one build in two cells: ${tookMs.toFixed(0)} ms`);
 		expect(won).toHaveLength(1);
 		expect(lost.map((problem) => problem.status)).toEqual(Array(49).fill(409));
 		for (const problem of lost) expect(problem.message).toContain(won[0]!.number);
@@ -96,7 +115,7 @@ describe('simultaneous confirmations', () => {
 			lost.filter((problem) => problem.message.startsWith(`Build ${build.number} stands in`))
 		).toHaveLength(25);
 		expect([await overlaps(), await adrift()]).toEqual([0, 0]);
-		expect(tookMs).toBeLessThan(LIMIT_MS);
+		await expectQuick('50 confirmations of one build in two cells', tookMs);
 	});
 
 	it('of the same request twenty times: it is confirmed once', async () => {
