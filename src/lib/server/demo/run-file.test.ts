@@ -5,7 +5,8 @@ import { NewLimitSet } from '../limits';
 import { DEMO_CELLS } from './lab/cells';
 import { DEMO_BATCHES } from './lab/fuels';
 import { DEMO_LIMIT_SETS } from './lab/limits';
-import { DEMO_RUNS, type DemoRun } from './lab/runs';
+import type { DemoRun } from './lab/run';
+import { DEMO_RUNS } from './lab/runs';
 import { engineOf, runFile } from './run-file';
 
 function contextOf(run: DemoRun): RunContext {

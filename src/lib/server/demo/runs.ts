@@ -15,7 +15,8 @@ import {
 } from '../runs';
 import { receiveTrace } from '../traces';
 import { labTime } from './calendar';
-import { DEMO_RUNS, type DemoRun } from './lab/runs';
+import type { DemoRun } from './lab/run';
+import { DEMO_RUNS } from './lab/runs';
 import type { Cast } from './people';
 import { runFile } from './run-file';
 
