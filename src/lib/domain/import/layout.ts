@@ -184,8 +184,10 @@ function fromHead(
 	const data = rows.slice(dataRecord);
 	const names = rows[header]!;
 	const named = widthOf(names);
-	if (dataWidth > Math.max(named, names.length)) return { ok: false, error: tooWide(dataWidth, named) };
-	const columns = Math.max(named, dataWidth);
+	const wider = data.slice(0, 50).filter((row) => widthOf(row) > Math.max(named, names.length));
+	// A few rows with a cell too many are counted; where most have more the columns cannot be told.
+	if (wider.length > 0.5 * Math.min(50, data.length)) return { ok: false, error: tooWide(dataWidth, named) };
+	const columns = Math.max(named, Math.min(dataWidth, names.length));
 	const headers = Array.from({ length: columns }, (_, at) => mended(names[at] ?? '') || `column ${at + 1}`);
 	const unitRow = units === null ? [] : rows[units]!;
 	return {
@@ -207,11 +209,14 @@ function fromHead(
 	};
 }
 
+export const NO_TABLE =
+	'No table was found in the file: no row holds numbers in columns. Export the samples with one row per sample, columns separated by comma, semicolon, tab or pipe.';
+
 function noRows(rows: readonly (readonly string[])[], dialect: Dialect): string {
 	const only = rows.find((row) => filled(row).length > 0) ?? [];
 	if (filled(only).length >= 2 && !contents(only, dialect).values)
 		return `The file has a header (${joined(only).slice(0, 120)}) but no rows of samples below it. Check that the recording ran, export it again and upload that file.`;
-	return 'No table was found in the file: no row holds numbers in columns. Export the samples with one row per sample, columns separated by comma, semicolon, tab or pipe.';
+	return NO_TABLE;
 }
 
 function tooWide(dataWidth: number, named: number): string {

@@ -1,7 +1,7 @@
 import Papa from 'papaparse';
 import { decode } from './decode';
 import { sniffDialect, type Dialect } from './dialect';
-import { findLayout, type Layout } from './layout';
+import { findLayout, NO_TABLE, type Layout } from './layout';
 import { TableBuilder, type Table } from './table';
 
 export interface ReadTable {
@@ -38,6 +38,9 @@ const LONGEST_RECORD = 1 << 22;
 
 const UNCLOSED =
 	'A quotation mark opens near the end of what could be read and never closes, so the rows after it cannot be told apart. Export the file again, or remove the mark.';
+
+const NO_ROWS =
+	'The file has a header but no rows of samples below it. Check that the recording ran, export it again and upload that file.';
 
 interface Opened {
 	ok: true;
@@ -115,11 +118,6 @@ export function readTable(bytes: Uint8Array): ReadTableResult {
 	);
 	if (!wellFormed) return { ok: false, error: UNCLOSED };
 	const table = builder.finish();
-	if (table.rows === 0)
-		return {
-			ok: false,
-			error:
-				'The file has a header but no rows of samples below it. Check that the recording ran, export it again and upload that file.'
-		};
+	if (table.rows === 0) return { ok: false, error: table.textRows > 0 ? NO_TABLE : NO_ROWS };
 	return { ok: true, table, layout, dialect, nulBytes };
 }
