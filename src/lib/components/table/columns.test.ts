@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { isNumeric, nextSort, readSort, sortHref, type Column } from './columns';
+import { cursorHref, isNumeric, nextSort, readSort, sortHref, type Column } from './columns';
 
 const POWER: Column = { key: 'power', head: 'Peak power', unit: 'kW', sort: 'peak_power' };
 const BUILD: Column = { key: 'build', head: 'Build', sort: 'build' };
@@ -31,3 +31,9 @@ describe('sorting by address', () => {
 
 it('sets columns with a unit right', () =>
 	expect([POWER, BUILD, MARK].map(isNumeric)).toEqual([true, false, false]));
+
+it('pages with filters and sort kept', () => {
+	const url = new URL('https://lab.example/runs?cell=C1&cursor=abc&sort=build');
+	expect(cursorHref(url, 'def')).toBe('?cell=C1&cursor=def&sort=build');
+	expect(cursorHref(url, null)).toBe('?cell=C1&sort=build');
+});

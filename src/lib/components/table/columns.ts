@@ -42,3 +42,11 @@ export function readSort(url: URL, columns: readonly Column[]): Sort | undefined
 	if (!columns.some((column) => column.sort === by)) return undefined;
 	return { by, direction: text.startsWith('-') ? 'down' : 'up' };
 }
+
+/** The address with another page's cursor, or with none for the first page; filters and sort stay. */
+export function cursorHref(url: URL, cursor: string | null): string {
+	const query = new URLSearchParams(url.searchParams);
+	if (cursor) query.set('cursor', cursor);
+	else query.delete('cursor');
+	return `?${query.toString()}`;
+}
