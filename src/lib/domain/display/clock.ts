@@ -63,6 +63,9 @@ export function momentText(at: Date | string, zone: string): string {
 	return `${dayText(at, zone)}, ${clockOf(msOf(at), zone)}`;
 }
 
+/** `09:00`. @param zone IANA name */
+export const clockText = (at: Date | string, zone: string): string => clockOf(msOf(at), zone);
+
 /** `Tue 8 Dec 2026, 09:00–14:00`; the day of the end only where it is another. @param zone IANA name */
 export function slotText(from: Date | string, to: Date | string, zone: string): string {
 	const sameDay = dayText(from, zone) === dayText(to, zone);

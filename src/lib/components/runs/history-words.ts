@@ -1,0 +1,13 @@
+const WORDS: Readonly<Record<string, string>> = {
+	'run.open': 'opened the record',
+	'run.close': 'closed the record',
+	'run.accept': 'accepted the run',
+	'run.void': 'voided the run',
+	'run.flag': 'raised a flag',
+	'run.figures': 'computed the figures',
+	'trace.receive': 'uploaded a trace',
+	'trace.map': 'mapped the columns of a trace'
+};
+
+/** What was done, to stand after who did it; an action that is not known here is told by its own name. */
+export const historyWords = (action: string): string => WORDS[action] ?? action;

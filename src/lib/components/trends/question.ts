@@ -1,0 +1,36 @@
+/** What runs can be grouped by. */
+export const GROUPS = ['build', 'engine', 'fuel', 'cell', 'month'] as const;
+type Group = (typeof GROUPS)[number];
+
+export interface Question {
+	metric: string;
+	groupBy: Group;
+	engine: string;
+	fuel: string;
+	cell: string;
+	from: string;
+	to: string;
+	[name: string]: string;
+}
+
+export function groupWord(group: string, isHead = false): string {
+	return isHead ? group.charAt(0).toUpperCase() + group.slice(1) : group;
+}
+
+const FIRST = 'bte_max';
+
+/** What an address asks; a figure or a group that there is not becomes the usual one. */
+export function questionOf(query: URLSearchParams, metrics: readonly string[]): Question {
+	const of = (name: string) => query.get(name) ?? '';
+	const usual = metrics.includes(FIRST) ? FIRST : (metrics[0] ?? FIRST);
+	const day = (name: string) => (/^\d{4}-\d\d-\d\d$/.test(of(name)) ? of(name) : '');
+	return {
+		metric: metrics.includes(of('metric')) ? of('metric') : usual,
+		groupBy: GROUPS.find((group) => group === of('groupBy')) ?? 'build',
+		engine: of('engine'),
+		fuel: of('fuel'),
+		cell: of('cell'),
+		from: day('from'),
+		to: day('to')
+	};
+}
