@@ -14,8 +14,12 @@ export function refused<T extends Record<string, unknown>>(
 	const problem = problemOf(cause);
 	if (!problem) throw cause;
 	const placed = Object.entries(problem.fields).filter(([field]) => (fieldOf[field] ?? field) in form.data);
-	for (const [field, sentence] of placed) setError(form, (fieldOf[field] ?? field) as never, sentence);
+	for (const [field, sentence] of placed)
+		setError(form, (fieldOf[field] ?? field) as never, capitalised(sentence));
 	// A sentence that belongs to no field of this form stands above it.
 	if (!placed.length) setError(form, '' as never, problem.message);
 	return fail(problem.status, { form });
 }
+
+/** The API puts the field's name before the sentence; at the field itself it begins one. */
+const capitalised = (sentence: string) => sentence.charAt(0).toUpperCase() + sentence.slice(1);

@@ -73,7 +73,8 @@ async function decide(
 	} catch (cause) {
 		const problem = problemOf(cause);
 		if (!problem) throw cause;
-		return fail(problem.status, { on, reason: typed, problem: problem.message });
+		const sentence = on === 'confirm' ? `Not confirmed. ${problem.message}` : problem.message;
+		return fail(problem.status, { on, reason: typed, problem: sentence });
 	}
 }
 
