@@ -20,8 +20,8 @@ export const notNegative = z
 export const instant = z.iso
 	.datetime({ offset: true, error: 'give a time like 2026-03-01T08:00:00+01:00' })
 	.transform((text) => new Date(text));
-/** A clock time as it is answered. */
-export const instantOut = z.date().transform((date) => date.toISOString());
+/** A clock time as it is answered; text already where an answer is remembered and sent again. */
+export const instantOut = z.union([z.date().transform((date) => date.toISOString()), z.iso.datetime()]);
 export const reason = z.string().trim().max(1000, 'at most 1000 characters');
 
 /** Points of a line over speed: finite, speeds rising. */

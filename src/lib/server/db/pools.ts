@@ -38,6 +38,9 @@ export function openPool(url: string, max: number): pg.Pool {
 	});
 	// Without a handler an idle connection's error ends the process.
 	pool.on('error', (error) => log.warn({ err: error }, 'idle database connection lost'));
+	pool.on('connect', (client) =>
+		client.on('error', (error) => log.warn({ err: error }, 'database connection lost'))
+	);
 	return pool;
 }
 

@@ -104,6 +104,13 @@ async function keepFigures(deps: Deps, trace: TraceRow, told: TraceContext, read
 				reductionId
 			}
 		});
+		// New figures are a new state of the run: whoever edits an older one is told.
+		const { version } = await trx
+			.updateTable('run')
+			.set((eb) => ({ version: eb('version', '+', 1) }))
+			.where('id', '=', trace.runId)
+			.returning('version')
+			.executeTakeFirstOrThrow();
 		if (trace.isPrimary && ready.flags.length)
 			await enqueue(
 				trx,
@@ -112,7 +119,7 @@ async function keepFigures(deps: Deps, trace: TraceRow, told: TraceContext, read
 					clientId: trace.clientId,
 					event: 'run.flagged',
 					subjectId: trace.runId,
-					revision: await timesReduced(trx, trace.id)
+					revision: version
 				},
 				`run.flagged:${reductionId}`
 			);
@@ -131,15 +138,6 @@ async function supersede(trx: Trx, traceId: string, now: Date): Promise<void> {
 		.execute();
 	for (const { id } of old)
 		await trx.updateTable('metric').set({ isCurrent: false }).where('reductionId', '=', id).execute();
-}
-
-async function timesReduced(trx: Trx, traceId: string): Promise<number> {
-	const { n } = await trx
-		.selectFrom('reduction')
-		.select((eb) => eb.fn.countAll<number>().as('n'))
-		.where('traceId', '=', traceId)
-		.executeTakeFirstOrThrow();
-	return n;
 }
 
 async function insertResults(trx: Trx, trace: TraceRow, reductionId: string, ready: Ready): Promise<void> {

@@ -6,7 +6,7 @@ import type pg from 'pg';
 import { log } from '../config';
 import type { Deps } from '../deps';
 import { JOBS, type JobData, type JobName } from '../jobs';
-import { mailHandlers } from '../mail';
+import { closeMail, mailHandlers } from '../mail';
 import { processTrace } from '../traces';
 
 /** The mapped type makes a task without a handler a compile error. */
@@ -66,6 +66,7 @@ export async function startWorker(deps: Deps, concurrency = 2): Promise<RunningW
 		ended: runner.promise,
 		stop: async () => {
 			await runner.stop();
+			closeMail(deps);
 			await life.end();
 		}
 	};
