@@ -10,6 +10,8 @@ import { suggestFuelUnit } from './fuel-unit';
 const BTE_SUSPECT = 0.55;
 const BTE_IMPLAUSIBLE = 0.65;
 const BTE_LEAST = 0.18;
+/** Points below this are part load, where a low efficiency is no wonder. */
+const LOADED_BMEP_KPA = 500;
 const LAMBDA_APART = 0.03;
 const POWER_APART = 0.01;
 
@@ -37,12 +39,18 @@ function underLoad(trace: Trace, reduced: Reduced): Values {
 const known = (values: readonly number[]) => values.filter(Number.isFinite);
 const percent = (value: number) => `${(100 * value).toFixed(1)} %`;
 
-function efficiencyFindings(values: Values, trace: Trace, context: RunContext, reduced: boolean): Finding[] {
+function efficiencyFindings(
+	values: Values,
+	trace: Trace,
+	context: RunContext,
+	reduced: boolean,
+	bmepMax: number
+): Finding[] {
 	const bte = known(values.bte);
 	if (bte.length === 0) return [];
 	// Samples scatter; means of bins and points do not, so there the highest counts.
 	const top = reduced ? Math.max(...bte) : quantile(bte, 0.95);
-	const low = reduced && top < BTE_LEAST;
+	const low = reduced && top < BTE_LEAST && (context.kind === 'power_sweep' || bmepMax >= LOADED_BMEP_KPA);
 	if (top <= BTE_SUSPECT && !low) return [];
 	const implausible = low || top > BTE_IMPLAUSIBLE;
 	const lambdaRatio = medianRatio(values);
@@ -144,7 +152,7 @@ export function figureFindings(
 	const values = underLoad(trace, reduced);
 	const isReduced = (reduced.curve['speed']?.length ?? 0) > 0;
 	return [
-		...efficiencyFindings(values, trace, context, isReduced),
+		...efficiencyFindings(values, trace, context, isReduced, reduced.metrics['bmep_max']?.value ?? 0),
 		...lambdaFindings(values),
 		...powerFindings(trace),
 		...fuelFindings(trace, spikes)

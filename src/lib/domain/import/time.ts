@@ -118,7 +118,7 @@ export function medianStep(values: Float64Array): number {
 }
 
 /** What the numbers of a time column without a unit count, where their size leaves no doubt; null where it does. */
-export function timeUnitBySize(values: Float64Array): { unit: 's' | 'ms' | 'd'; sure: boolean } | null {
+export function timeUnitBySize(values: Float64Array): { unit: 's' | 'ms' | 'd' } | null {
 	let first = NaN;
 	for (const value of values)
 		if (!Number.isNaN(value)) {
@@ -128,11 +128,11 @@ export function timeUnitBySize(values: Float64Array): { unit: 's' | 'ms' | 'd'; 
 	const step = medianStep(values);
 	if (Number.isNaN(first) || Number.isNaN(step)) return null;
 	// Unix seconds and milliseconds of this half-century, and a spreadsheet's day numbers.
-	if (first > 9e8 && first < 4e9) return { unit: 's', sure: true };
-	if (first > 9e11 && first < 4e12) return { unit: 'ms', sure: true };
-	if (first > 25_000 && first < 80_000 && step < 0.01) return { unit: 'd', sure: true };
+	if (first > 9e8 && first < 4e9) return { unit: 's' };
+	if (first > 9e11 && first < 4e12) return { unit: 'ms' };
+	if (first > 25_000 && first < 80_000 && step < 0.01) return { unit: 'd' };
 	const whole = values.every((value) => Number.isNaN(value) || Number.isInteger(value));
-	if (!whole && step <= 2) return { unit: 's', sure: true };
+	if (!whole && step <= 2) return { unit: 's' };
 	return null;
 }
 

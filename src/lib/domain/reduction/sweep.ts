@@ -81,7 +81,7 @@ function fullLoadRows(ramps: readonly Ramp[], throttle: Float64Array | undefined
 	const limit = throttle ? share * quantile(thinned(throttle), 0.995) : 0;
 	const rows: number[] = [];
 	for (const { from, to } of ramps)
-		for (let i = from; i < to; i++) if (!throttle || throttle[i]! >= limit) rows.push(i);
+		for (let i = from; i < to; i++) if (!(limit > 0) || throttle![i]! >= limit) rows.push(i);
 	return rows;
 }
 

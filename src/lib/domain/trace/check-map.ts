@@ -1,6 +1,7 @@
 import { channelOf, splitCode } from '../channels/catalogue';
 import { splitHeader } from '../channels/split-header';
 import type { Table, TableColumn } from '../import/table';
+import { timeUnitBySize } from '../import/time';
 import type { ColumnMap } from '../model';
 import { converter } from '../units/convert';
 import { parseUnit, refusedUnit, type Unit } from '../units/parse';
@@ -53,6 +54,8 @@ function checkColumn(column: TableColumn, entry: ColumnMap | undefined): MappedC
 			`The unit “${unitText}” of ${named(column)} is not known. Give the unit that its numbers are in, for example ${target.unit}.`
 		);
 	if (unit === null) {
+		const bySize = channel === 'time' && unitText === null ? timeUnitBySize(column.values) : null;
+		if (bySize) return { ...mapped, unit: parseUnit(bySize.unit), unitText: bySize.unit };
 		if (target.dimension === 'ratio') return { ...mapped, unit: parseUnit(target.unit) };
 		return `The map gives ${named(column)} no unit; ${channel} needs one, for example ${target.unit}.`;
 	}

@@ -61,7 +61,16 @@ function proposeColumn(column: TableColumn): ProposedColumn {
 	if (column.form !== 'number') return { ...proposed, guess: 'time', confidence: 0.95, unit: 's' };
 	if (column.numbers === 0)
 		return { ...proposed, confidence: 0, reasons: [...reasons, 'The column holds text, not numbers.'] };
-	return code === 'time' ? withTimeUnit(proposed, column) : proposed;
+	if (code === 'time') return withTimeUnit(proposed, column);
+	// `t [ms]` says no more than its unit; that it goes forward at every row says the rest.
+	if (parseUnit(unit)?.dimension === 'time' && forwardShare(column.values) > 0.98)
+		return {
+			...proposed,
+			guess: 'time',
+			confidence: 0.9,
+			reasons: ['Its unit is one of time, and it goes forward.']
+		};
+	return proposed;
 }
 
 /** A clock without a unit is sure only where the size of its numbers leaves one reading. */
@@ -101,7 +110,10 @@ function chooseTime(proposed: ProposedColumn[], table: Table): void {
 	const unnamed = proposed.find((column) => {
 		const source = columns.get(column.index);
 		return (
-			column.guess === null && source !== undefined && source.numbers > 2 && forwardShare(source.values) === 1
+			column.confidence < LIKELY &&
+			source !== undefined &&
+			source.numbers > 2 &&
+			forwardShare(source.values) === 1
 		);
 	});
 	if (!unnamed) return;

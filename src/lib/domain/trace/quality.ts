@@ -11,6 +11,11 @@ export interface SampleChecks {
 	spikes: Map<string, readonly number[]>;
 }
 
+const OFF_ZERO_SHARE = 1e-3;
+
+/** What an engine's controls really do within a few samples: pulses and steps, not faults of the recorder. */
+const MAY_JUMP = /^(throttle|ignition_advance|knock|electrical_power|battery_voltage|battery_current)(\.|$)/;
+
 function spikeFinding(column: TraceColumn, spikes: readonly number[], time: Float64Array): Finding {
 	const set = new Set(spikes);
 	const first = spikes[0]!;
@@ -27,7 +32,9 @@ function impossible(column: TraceColumn, time: Float64Array | null, rowNumbers: 
 	const range = channelOf(column.code)?.possible;
 	if (!range) return [];
 	const [lo, hi] = range;
-	const out = (i: number) => column.values[i]! < lo || column.values[i]! > hi;
+	// A zero that sits a little off (a speed at standstill) is not impossible.
+	const slack = OFF_ZERO_SHARE * (hi - lo);
+	const out = (i: number) => column.values[i]! < lo - slack || column.values[i]! > hi + slack;
 	let count = 0;
 	let first = -1;
 	let worst = NaN;
@@ -52,16 +59,16 @@ function impossible(column: TraceColumn, time: Float64Array | null, rowNumbers: 
 }
 
 /**
- * Checks the samples of every channel by themselves: spikes, stuck or clipped values, values that cannot be.
- * Channels under their own header have no possible range and are checked for spikes and standing still only.
+ * Checks the samples of every canonical channel by themselves: spikes, stuck or clipped values, values that cannot be.
+ * What a column under its own header may do is not known, so it is left alone.
  */
 export function checkSamples(trace: Trace): SampleChecks {
 	const findings: Finding[] = [];
 	const spikes = new Map<string, readonly number[]>();
 	for (const column of trace.columns) {
 		findings.push(...impossible(column, trace.time, trace.rowNumbers));
-		if (!trace.time) continue;
-		const found = findSpikes(column.values);
+		if (!trace.time || !channelOf(column.code)) continue;
+		const found = MAY_JUMP.test(column.code) ? [] : findSpikes(column.values);
 		if (found.length > 0) {
 			spikes.set(column.code, found);
 			findings.push(spikeFinding(column, found, trace.time));
