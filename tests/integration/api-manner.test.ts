@@ -213,6 +213,46 @@ describe('problem documents', () => {
 	});
 });
 
+describe('an upload', () => {
+	it.each([undefined, 'application/x-www-form-urlencoded', 'text/plain', 'multipart/form-data; boundary=x'])(
+		'with the content type %s arrives as it was sent',
+		async (type) => {
+			const { id } = (await call('POST', '/runs', run)).json;
+			const bytes = new TextEncoder().encode('time [s],speed [rpm]\n0,1\n0.1,2\n');
+			const response = await fetch(
+				`${stack.current.origin}/api/v1/runs/${id as string}/traces?filename=t.csv`,
+				{
+					method: 'POST',
+					headers: { authorization: `Bearer ${token}`, ...(type ? { 'content-type': type } : {}) },
+					body: bytes
+				}
+			);
+			expect(response.status).toBe(202);
+			const { traces } = (await call('GET', `/runs/${id as string}`)).json as {
+				traces: { sizeBytes: number; filename: string }[];
+			};
+			expect(traces).toMatchObject([{ sizeBytes: bytes.length, filename: 't.csv' }]);
+		}
+	);
+
+	it('of nothing is kept as an empty file and refused', async () => {
+		const { id } = (await call('POST', '/runs', run)).json;
+		const sent = await call('POST', `/runs/${id as string}/traces?filename=none.csv`);
+		expect(sent.status).toBe(202);
+		for (
+			const until = Date.now() + 20_000;
+			Date.now() < until;
+			await new Promise((go) => setTimeout(go, 100))
+		) {
+			const { traces } = (await call('GET', `/runs/${id as string}`)).json as {
+				traces: { state: string; sizeBytes: number }[];
+			};
+			if (traces[0]!.state === 'refused') return expect(traces[0]!.sizeBytes).toBe(0);
+		}
+		throw new Error('the empty file was not refused within 20 s');
+	});
+});
+
 describe('health and description', () => {
 	it('names each dependency', async () => {
 		expect((await call('GET', '/health')).json).toEqual({

@@ -87,8 +87,10 @@ async function ask(
 		},
 		...(form ? { body: new URLSearchParams(form).toString() } : {})
 	});
-	// A page names its own nonce; nothing else may differ.
-	const text = (await response.text()).replace(/nonce="[^"]*"/g, 'nonce="…"');
+	// A page names its own nonce and its request; nothing else may differ.
+	const text = (await response.text())
+		.replace(/nonce="[^"]*"/g, 'nonce="…"')
+		.replaceAll(response.headers.get('x-request-id') ?? 'no request id', '…');
 	return { status: response.status, text, location: response.headers.get('location') };
 }
 
