@@ -12,7 +12,7 @@ export interface FieldProps {
 }
 
 /** What the input itself must carry to belong to its label, hint and error. */
-export interface FieldAria {
+interface FieldAria {
 	id: string;
 	'aria-describedby': string | undefined;
 	'aria-invalid': 'true' | undefined;
