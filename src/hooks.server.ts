@@ -76,9 +76,10 @@ async function gate(event: RequestEvent): Promise<Response | null> {
 
 function isForeign(event: RequestEvent): boolean {
 	const site = event.request.headers.get('sec-fetch-site');
-	if (site !== null) return site !== 'same-origin';
 	const origin = event.request.headers.get('origin');
-	if (origin !== null) return origin !== event.url.origin;
+	if (origin !== null && origin !== event.url.origin) return true;
+	if (site !== null && site !== 'same-origin') return true;
+	if (site !== null || origin !== null) return false;
 	// Neither header: no browser of today. Only a request that carries no cookie may pass.
 	return event.locals.who !== null;
 }

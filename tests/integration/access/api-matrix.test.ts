@@ -303,7 +303,7 @@ describe('every operation of the API', () => {
 					role === 'engineer' &&
 					['moveBooking', 'cancelBooking'].includes(operation.described.operationId)
 				) {
-					expect(answer.text, label).toContain('of someone else');
+					expect(answer.text, label).toContain('someone else');
 					continue;
 				}
 				// Taken, ended and clashing are answers about one's own things; refusals of access and faults are not.

@@ -4,6 +4,8 @@ import { badRequest, Problem } from '../problem';
 import type { Operation } from './operation';
 
 const MAX_JSON_BYTES = 1024 * 1024;
+/** Read on and thrown away, so that the sender hears the refusal and not a broken connection. */
+const MOST_DISCARDED_BYTES = 32 * MAX_JSON_BYTES;
 
 /** Field path → sentence, first one of each field; the whole in one sentence for people who read only `detail`. */
 export function problemOfInput(error: z.ZodError): Problem {
@@ -48,9 +50,10 @@ async function limitedText(request: Request): Promise<string> {
 	let size = 0;
 	for await (const chunk of request.body as unknown as AsyncIterable<Uint8Array>) {
 		size += chunk.byteLength;
-		if (size > MAX_JSON_BYTES) throw new Problem(413, 'Too large', 'A JSON body may have 1 MiB at most.');
-		chunks.push(chunk);
+		if (size > MOST_DISCARDED_BYTES) break;
+		if (size <= MAX_JSON_BYTES) chunks.push(chunk);
 	}
+	if (size > MAX_JSON_BYTES) throw new Problem(413, 'Too large', 'A JSON body may have 1 MiB at most.');
 	try {
 		return new TextDecoder('utf-8', { fatal: true }).decode(Buffer.concat(chunks));
 	} catch {
