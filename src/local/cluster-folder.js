@@ -11,7 +11,6 @@ import {
 	statSync,
 	writeFileSync
 } from 'node:fs';
-import { userInfo } from 'node:os';
 import path from 'node:path';
 import { promisify } from 'node:util';
 import { postgresPrograms, serverUser } from './debian.js';
@@ -124,7 +123,7 @@ export async function ensureFolder(home, throwAway) {
 function checkedVersion(home, folder) {
 	const owner = statSync(folder, { throwIfNoEntry: false })?.uid;
 	const version = path.join(folder, 'data', 'PG_VERSION');
-	const expected = serverUser()?.uid ?? userInfo().uid;
+	const expected = serverUser()?.uid ?? process.getuid?.();
 	if (owner !== undefined && owner !== expected)
 		throw new Mendable(
 			`The private database in ${folder} belongs to the user with the number ${owner}, not to ${expected}. ` +

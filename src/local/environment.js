@@ -1,4 +1,4 @@
-import { userInfo } from 'node:os';
+import { homedir } from 'node:os';
 import { LOGINS, roleOf } from './roles.js';
 
 /**
@@ -103,5 +103,5 @@ export function surroundings(env) {
 	]
 		.map((name) => [name, env[name]])
 		.filter((entry) => entry[1] !== undefined);
-	return { HOME: userInfo().homedir, TZ: 'UTC', ...Object.fromEntries(entries) };
+	return { HOME: homedir(), TZ: 'UTC', ...Object.fromEntries(entries) };
 }

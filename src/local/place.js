@@ -12,6 +12,15 @@ export const localFolder = path.join(root, '.local');
 /** A failure that a person can mend: its message is one sentence and what to do, and is all that is shown. */
 export class Mendable extends Error {}
 
+/** The name of the user who runs this; a container may run as a number without one. */
+function whoWeAre() {
+	try {
+		return userInfo().username;
+	} catch {
+		return String(process.getuid?.());
+	}
+}
+
 /** @param {unknown} error */
 export const codeOf = (error) =>
 	error instanceof Error && 'code' in error && typeof error.code === 'string' ? error.code : '';
@@ -31,8 +40,8 @@ export function makeFolder(folder) {
 		const code = codeOf(error);
 		if (!['EACCES', 'EPERM', 'EROFS'].includes(code)) throw error;
 		throw new Mendable(
-			`${folder} cannot be written by ${userInfo().username} (${code}). ` +
-				`Run as the owner of ${root}, or give this user the folder: chown -R ${userInfo().username} ${root}`
+			`${folder} cannot be written by ${whoWeAre()} (${code}). ` +
+				`Run as the owner of ${root}, or give this user the folder: chown -R ${whoWeAre()} ${root}`
 		);
 	}
 }

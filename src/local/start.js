@@ -103,20 +103,31 @@ function stopAtOnce() {
 	for (const one of own) if (isAlive(one)) process.kill(one.pid, 'SIGKILL');
 }
 
+const ANSWER_MS = 120_000;
+const ALL_WELL_MS = 20_000;
+
+/** Until the web server answers and all that it needs does too; what is someone else's to mend only gets a word. */
 async function waitForHealth() {
 	const host = ['0.0.0.0', '::'].includes(web.HOST) ? '127.0.0.1' : web.HOST;
 	const at = `http://${host.includes(':') ? `[${host}]` : host}:${web.PORT}/api/v1/health`;
 	let said = 'no answer';
-	for (const until = performance.now() + 120_000; performance.now() < until && !stopping; await sleep(100)) {
+	let until = performance.now() + ANSWER_MS;
+	let answered = false;
+	for (; performance.now() < until && !stopping; await sleep(100)) {
 		try {
 			const response = await fetch(at, { signal: AbortSignal.timeout(5_000) });
-			said = `${response.status} ${await response.text()}`;
-			if (response.status === 200) return;
+			said = await response.text();
+			if (response.status !== 200) continue;
+			if (JSON.parse(said).status === 'ok') return;
+			if (!answered) until = performance.now() + ALL_WELL_MS;
+			answered = true;
 		} catch (error) {
 			said = textOf(error);
 		}
 	}
-	if (!stopping)
+	if (stopping) return;
+	if (answered) console.error(`The web server answers, but not all is well: ${said}`);
+	else
 		throw new Mendable(
 			`The web server did not become healthy in two minutes (${said}). Its logs are in ${localFolder}/log.`
 		);
@@ -188,18 +199,20 @@ async function main() {
 	await endLeftovers();
 	if (!servicesOnly) await checkPort();
 	await ensurePackages();
-	if (!servicesOnly) await ensureBuild();
 	if (stopping) return;
-	const services = await startServices({
-		home: localFolder,
-		given: process.env,
-		throwAway: false,
-		pagePort: Number(web.PORT) + 1,
-		onStart: (one) => {
-			serviceProcesses.push(one);
-			remember(one);
-		}
-	});
+	const [services] = await Promise.all([
+		startServices({
+			home: localFolder,
+			given: process.env,
+			throwAway: false,
+			pagePort: Number(web.PORT) + 1,
+			onStart: (one) => {
+				serviceProcesses.push(one);
+				remember(one);
+			}
+		}),
+		servicesOnly || ensureBuild()
+	]);
 	serviceProcesses.forEach(watch);
 	Object.assign(state, { mailPage: services.mailPage, env: { ...services.env, ...web } });
 	writeRunState(state);

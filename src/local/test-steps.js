@@ -2,6 +2,7 @@ import { spawn } from 'node:child_process';
 import { existsSync, readFileSync } from 'node:fs';
 import { root } from './place.js';
 import { program } from './prepare.js';
+import { endingWithUs } from './processes.js';
 
 /**
  * The steps of `npm test`: each has a heading, a time and an outcome.
@@ -69,7 +70,8 @@ export async function runStep(
 function runGroup(command, env, live, limitMs) {
 	return new Promise((resolve, reject) => {
 		// Its own process group, so that an overdue step ends with its own children.
-		const child = spawn(command[0] ?? '', command.slice(1), {
+		const [file = '', ...args] = endingWithUs(command, 'TERM');
+		const child = spawn(file, args, {
 			cwd: root,
 			env,
 			detached: true,

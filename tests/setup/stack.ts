@@ -90,7 +90,7 @@ export async function startStack(extra: Record<string, string> = {}): Promise<St
 			const command = [process.execPath, ...commands[part]];
 			const running = startProcess(part, command, { env, cwd: root, log: log(part) });
 			parts.set(part, running);
-			await waitForHealth(origin, running, parts.has('web'));
+			if (parts.has('web')) await waitForHealth(origin, running, parts.has('worker'));
 		},
 		stop: async () => {
 			await stack.end('web', 'SIGTERM');
@@ -108,8 +108,8 @@ export async function startStack(extra: Record<string, string> = {}): Promise<St
 	return stack;
 }
 
-async function waitForHealth(origin: string, running: Running, hasWeb: boolean): Promise<void> {
-	if (!hasWeb) return;
+/** Until the web server answers, and with a worker until all is well. */
+async function waitForHealth(origin: string, running: Running, hasWorker: boolean): Promise<void> {
 	let ended: string | undefined;
 	void running.gone.then((how) => (ended = how));
 	const until = performance.now() + 60_000;
@@ -117,8 +117,9 @@ async function waitForHealth(origin: string, running: Running, hasWeb: boolean):
 	while (performance.now() < until) {
 		if (ended !== undefined) throw new Error(`${running.name} ${ended}: ${lastLines(running.log, 20)}`);
 		const answer = await fetch(`${origin}/api/v1/health`).catch(() => null);
-		if (answer?.status === 200) return;
-		said = answer ? `${answer.status} ${await answer.text()}` : 'no answer';
+		said = answer ? await answer.text() : 'no answer';
+		if (answer?.status === 200 && (!hasWorker || (JSON.parse(said) as { status: string }).status === 'ok'))
+			return;
 		await sleep(100);
 	}
 	throw new Error(`not healthy after a minute: ${said}\n${lastLines(running.log, 20)}`);
