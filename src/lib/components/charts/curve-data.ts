@@ -1,5 +1,6 @@
 import { labelOf } from '$lib/domain/display/labels';
 import type { Curve } from '$lib/domain/model';
+import { rises } from '../figures/curve-path';
 
 /** Codes of a reduced curve that its chart knows how to place, top pane first. */
 export const UPPER = ['power', 'torque'] as const;
@@ -10,6 +11,8 @@ export interface CurveTable {
 	speed: number[];
 	/** By code, as printed: fractions in %. */
 	columns: Record<string, (number | null)[]>;
+	/** Points held one after another: not to be joined. */
+	isPoints: boolean;
 }
 
 /** The curve as a chart takes it: rows without a speed left out, speeds rising, efficiencies in %. */
@@ -28,5 +31,5 @@ export function curveTable(curve: Curve, codes: readonly string[]): CurveTable {
 			return value === null ? null : value * scale;
 		});
 	}
-	return { speed: order.map(({ rpm }) => rpm), columns };
+	return { speed: order.map(({ rpm }) => rpm), columns, isPoints: !rises(curve.speed ?? []) };
 }

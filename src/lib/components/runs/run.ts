@@ -21,7 +21,7 @@ export interface RunTraceFile {
 	rows: number | null;
 	sampleRateHz: number | null;
 	channels: Pick<ChannelInfo, 'code' | 'header' | 'unit'>[] | null;
-	findings: Finding[];
+	findings: (Omit<Finding, 'channel'> & { channel: string | null })[];
 	proposal: unknown;
 	error: string | null;
 }

@@ -5,20 +5,24 @@ const channels = (...codes: string[]) => codes.map((code) => ({ code }));
 
 describe('what a trace opens with', () => {
 	it('takes the telling channels, in the order of the file', () => {
-		const file = channels(
-			'time',
-			'Pedal',
-			'torque',
-			'speed',
-			'oil_temp',
-			'fuel_flow',
-			'power',
-			'lambda_sensor'
-		);
+		const file = channels('Pedal', 'torque', 'speed', 'oil_temp', 'fuel_flow', 'power', 'lambda_sensor');
 		expect(firstPanes(file)).toEqual(['torque', 'speed', 'fuel_flow', 'power']);
 	});
-	it('fills up with columns kept under their own headers, never with the clock', () => {
-		expect(firstPanes(channels('time', 'A', 'B'))).toEqual(['A', 'B']);
+	it('shows what a flag speaks of and what a finding is about', () => {
+		const file = channels(
+			'speed',
+			'torque',
+			'power',
+			'fuel_flow',
+			'oil_temp',
+			'fuel_energy_flow',
+			'Valve, left'
+		);
+		const said = ['Over speed: fuel_energy_flow was above its limit for 2.32 s.', 'Valve, left'];
+		expect(firstPanes(file, said)).toEqual(['speed', 'torque', 'fuel_energy_flow', 'Valve, left']);
+	});
+	it('fills up with columns kept under their own headers', () => {
+		expect(firstPanes(channels('A', 'B'))).toEqual(['A', 'B']);
 	});
 });
 

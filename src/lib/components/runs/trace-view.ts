@@ -20,12 +20,18 @@ const TELLING = [
 ];
 const PANES = 4;
 
-/** The panes that a trace opens with: the telling channels that it has, else its first ones. */
-export function firstPanes(channels: readonly Coded[]): string[] {
+/**
+ * The panes that a trace opens with: the telling channels that it has, else its first ones; what a flag or a finding with a
+ * place on the trace speaks of comes after the first two.
+ * @param said sentences of flags and codes of findings
+ */
+export function firstPanes(channels: readonly Coded[], said: readonly string[] = []): string[] {
 	const codes = channels.map(({ code }) => code);
+	const words = new Set(said.flatMap((sentence) => [sentence, ...sentence.split(/[^\w.]+/)]));
 	const telling = TELLING.filter((code) => codes.includes(code));
-	const rest = codes.filter((code) => code !== 'time' && !telling.includes(code));
-	const chosen = [...telling, ...rest].slice(0, PANES);
+	const rest = codes.filter((code) => !telling.includes(code));
+	const spoken = codes.filter((code) => words.has(code));
+	const chosen = [...new Set([...telling.slice(0, 2), ...spoken, ...telling, ...rest])].slice(0, PANES);
 	return codes.filter((code) => chosen.includes(code));
 }
 

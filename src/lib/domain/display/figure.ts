@@ -24,7 +24,8 @@ export function figureText(code: string, metric: MetricValue | null): FigureText
 	if (!metric) return { label, value: NONE, plusMinus: null, unit, at: null, outside: null };
 	const scale = percent ? 100 : 1;
 	const expanded = metric.u === null ? 0 : metric.u * COVERAGE * scale;
-	const known = expanded > 0 && Number.isFinite(metric.value);
+	// What arithmetic alone leaves over is no uncertainty.
+	const known = expanded > Math.abs(metric.value * scale) * 1e-9 && Number.isFinite(metric.value);
 	const shown = known
 		? formatWithUncertainty(metric.value * scale, expanded)
 		: { value: formatNumber(metric.value * scale, decimals), plusMinus: null };

@@ -108,20 +108,38 @@ const FUEL: Readonly<Record<FuelPropertyName, Label>> = {
 	expansionPerK: of('Expansion', '1/K', 5)
 };
 
+/** Columns that points have beside channels and metrics. */
+const POINTS: Readonly<Record<string, Label>> = {
+	n: of('Samples', '', 0),
+	time_from: of('From', 's', 1),
+	time_to: of('To', 's', 1),
+	power_corrected: of('Power, corrected', 'kW', 2),
+	torque_corrected: of('Torque, corrected', 'N·m', 1)
+};
+
 /**
  * How a channel, metric or fuel property is written. A code that none of them knows is a column kept under its own
  * header: written as it is, in the unit given.
  */
 export function labelOf(code: string, unit = ''): Label {
-	if (code === 'n') return of('Samples', '', 0);
-	const known = METRICS[code] ?? (FUEL as Readonly<Record<string, Label>>)[code];
+	const known = METRICS[code] ?? POINTS[code] ?? (FUEL as Readonly<Record<string, Label>>)[code];
 	if (known) return known;
+	const part = /^(raw_max|raw_min|sd|cov)_(.+)$/.exec(code);
+	if (part?.[1] && part[2]) return partLabel(part[1], labelOf(part[2], unit));
 	const channel = channelOf(code);
 	if (!channel) return of(code, printedUnit(unit), 2);
 	const { base, index } = splitCode(code);
 	const label = index === null ? channel.label : `${channel.label} ${index}`;
 	if (FRACTION_CHANNELS.has(base)) return fraction(label, CHANNEL_DECIMALS[base] ?? 1);
 	return of(label, printedUnit(channel.unit), CHANNEL_DECIMALS[base] ?? 1);
+}
+
+/** What is told of a channel beside its mean. */
+function partLabel(part: string, whole: Label): Label {
+	if (part === 'cov') return fraction(`${whole.label}, coefficient of variation`, 2);
+	if (part === 'sd')
+		return { ...whole, label: `${whole.label}, standard deviation`, decimals: whole.decimals + 1 };
+	return { ...whole, label: `${whole.label}, ${part === 'raw_min' ? 'lowest' : 'highest'} single sample` };
 }
 
 /** A stored unit as text beside a number: the dash of a pure number vanishes. */

@@ -114,7 +114,8 @@ async function readTraces(trx: Trx, runId: string): Promise<TraceViewIn[]> {
 				code: finding.code,
 				severity: finding.severity as 'info',
 				message: finding.message,
-				spans: finding.spans as [number, number][]
+				spans: finding.spans as [number, number][],
+				channel: finding.channel
 			})),
 		proposal: row.proposal,
 		error: row.error,

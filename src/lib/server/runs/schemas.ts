@@ -59,7 +59,9 @@ const TraceView = z.object({
 			code: z.string(),
 			severity: z.enum(['info', 'warning', 'error']),
 			message: z.string(),
-			spans: z.array(Span)
+			spans: z.array(Span),
+			/** Canonical code, or own header, of the channel it speaks of. */
+			channel: z.string().nullable()
 		})
 	),
 	proposal: z.unknown().nullable(),
