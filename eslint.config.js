@@ -39,7 +39,9 @@ const oneWayImports = {
 	create(context) {
 		const from = placeOf(context.filename);
 		if (!context.filename.includes('/src/')) return {};
-		const check = (/** @type {import('estree').Node & { source?: { value?: unknown } | null }} */ node) => {
+		const check = (
+			/** @type {import('eslint').Rule.Node & { source?: { value?: unknown } | null }} */ node
+		) => {
 			const name = node.source?.value;
 			if (typeof name !== 'string') return;
 			if (from.layer === 'server' && /^\$(app|env)\//.test(name))

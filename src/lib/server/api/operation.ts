@@ -18,7 +18,7 @@ import { badRequest, Problem } from '../problem';
 import { problemResponse } from './problem-document';
 import { answerOf, jsonBody, queryOf } from './request';
 
-export interface Call<Q, B> {
+interface Call<Q, B> {
 	deps: Deps;
 	who: Principal;
 	params: Record<string, string>;

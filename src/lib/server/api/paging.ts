@@ -10,7 +10,7 @@ export const pageOf = <T extends z.ZodType>(item: T) =>
 	z.object({ items: z.array(item), nextCursor: z.string().nullable() });
 
 /** Pages by key, never by offset: a page stays right while rows are added before it. */
-export function cursorOf(values: (string | number)[]): string {
+function cursorOf(values: (string | number)[]): string {
 	return Buffer.from(JSON.stringify(values)).toString('base64url');
 }
 

@@ -8,7 +8,7 @@ const MAX_JSON_BYTES = 1024 * 1024;
 const MOST_DISCARDED_BYTES = 32 * MAX_JSON_BYTES;
 
 /** Field path → sentence, first one of each field; the whole in one sentence for people who read only `detail`. */
-export function problemOfInput(error: z.ZodError): Problem {
+function problemOfInput(error: z.ZodError): Problem {
 	const fields: Record<string, string> = {};
 	for (const issue of error.issues) fields[issue.path.join('.') || 'body'] ??= issue.message;
 	const detail = Object.entries(fields).map(([field, sentence]) => `${field}: ${sentence}`);

@@ -78,7 +78,3 @@ export async function principalOfSession(deps: Deps, token: string): Promise<Pri
 export async function endSession(deps: Deps, sessionId: string): Promise<void> {
 	await of(deps).invalidateSession(sessionId);
 }
-
-export async function endAllSessions(deps: Deps, personId: string): Promise<void> {
-	await of(deps).invalidateUserSessions(personId);
-}

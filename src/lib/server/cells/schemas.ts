@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { fields } from '../api';
 
-export const Absorber = z.object({
+const Absorber = z.object({
 	kind: z.enum(['eddy_current', 'water_brake', 'ac', 'dc', 'hydraulic']),
 	maxPowerKw: fields.positive,
 	maxTorqueNm: fields.positive,
@@ -10,7 +10,7 @@ export const Absorber = z.object({
 
 const clock = z.string().regex(/^([01]\d|2[0-3]):[0-5]\d$|^24:00$/, 'give a clock time like 07:30');
 /** ISO weekdays, 1 = Monday. */
-export const OpeningHours = z
+const OpeningHours = z
 	.array(
 		z
 			.object({ day: z.number().int().min(1).max(7), from: clock, to: clock })

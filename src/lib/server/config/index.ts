@@ -26,7 +26,7 @@ const Environment = z.object({
 		.default(512 * 1024 * 1024)
 });
 
-export type LoginName = 'owner' | 'lab' | 'client' | 'auth' | 'queue';
+type LoginName = 'owner' | 'lab' | 'client' | 'auth' | 'queue';
 
 export interface Config {
 	databaseUrl(login: LoginName): string;

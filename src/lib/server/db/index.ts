@@ -6,4 +6,3 @@ export { migrate } from './migrate';
 export { nextNumber } from './numbers';
 export { openPools, type Db, type Pools, type Trx } from './pools';
 export { jsonb, rangeOf, type InstantRange } from './ranges';
-export type { DB } from './types';

@@ -32,6 +32,7 @@ export async function migrate(urls: { owner: string; queue: string }, folder: st
 
 /** Since PostgreSQL 15 `public` belongs to the database's owner, whose rights a NOINHERIT login has only after SET ROLE. */
 async function takePublicSchema(pool: pg.Pool): Promise<void> {
-	await pool.query(`begin; set local role pg_database_owner; revoke all on schema public from public;
+	await pool.query(`begin; select pg_advisory_xact_lock(hashtextextended('public schema', 0));
+		set local role pg_database_owner; revoke all on schema public from public;
 		grant all on schema public to trunnion_owner with grant option; commit`);
 }

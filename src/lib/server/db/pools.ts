@@ -29,7 +29,7 @@ pg.types.setTypeParser(INT8, (text) => {
 pg.types.setTypeParser(pg.types.builtins.DATE, (text) => text);
 pg.types.setTypeParser(TSTZRANGE as typeof pg.types.builtins.INT8, (text) => parseRange(text));
 
-export function openPool(url: string, max: number): pg.Pool {
+function openPool(url: string, max: number): pg.Pool {
 	const pool = new pg.Pool({
 		connectionString: url,
 		max,

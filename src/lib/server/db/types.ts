@@ -265,6 +265,11 @@ export interface Idempotency {
   status: number | null;
 }
 
+export interface JobsWorker {
+  id: string;
+  seenAt: Generated<Timestamp>;
+}
+
 export interface LimitSet {
   clientId: string | null;
   code: string;
@@ -431,6 +436,7 @@ export interface DB {
   fuel: Fuel;
   fuelBatch: FuelBatch;
   idempotency: Idempotency;
+  "jobs.worker": JobsWorker;
   limitSet: LimitSet;
   limitSetVersion: LimitSetVersion;
   logLine: LogLine;

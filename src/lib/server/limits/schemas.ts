@@ -31,7 +31,7 @@ const Limit = z.union(
 	{ error: 'give a number, [low, high], or {over, table}' }
 );
 
-export const RuleBody = z
+const RuleBody = z
 	.object({
 		title: fields.label(120),
 		subject: Subject,

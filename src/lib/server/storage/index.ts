@@ -25,7 +25,7 @@ export interface ObjectStore {
 	close(): void;
 }
 
-export class ObjectMissing extends Error {
+class ObjectMissing extends Error {
 	constructor(key: string, cause?: unknown) {
 		super(`The object store has no object ${key}.`, { cause });
 	}
