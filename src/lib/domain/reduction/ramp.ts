@@ -71,20 +71,84 @@ function turns(means: readonly Mean[], least: number): number[] {
 	return points;
 }
 
-/** Leaves out what stands still before and after the moving part (an idle or a hold before the pull). */
-function trimmed(means: readonly Mean[]): readonly Mean[] {
-	const rates: number[] = [];
-	for (let k = 1; k < means.length; k++)
-		rates.push((means[k]!.rpm - means[k - 1]!.rpm) / (means[k]!.timeS - means[k - 1]!.timeS));
-	const sign = Math.sign(means.at(-1)!.rpm - means[0]!.rpm);
-	const sorted = rates.map((rate) => rate * sign).sort((a, b) => a - b);
-	const usual = sorted[sorted.length >> 1]!;
-	if (!(usual > 0)) return means;
-	let from = 0;
-	let to = means.length;
-	while (from < rates.length && rates[from]! * sign < END_RATE_SHARE * usual) from++;
-	while (to - 1 > from && rates[to - 2]! * sign < END_RATE_SHARE * usual) to--;
-	return to - from >= 3 ? means.slice(from, to) : means;
+/** Where the line through two means of the ramp meets the speed of the hold beside it; not further than the means next to it. */
+function meeting(holdRpm: number, near: Mean, far: Mean, within: readonly [number, number]): number {
+	const rate = (far.rpm - near.rpm) / (far.timeS - near.timeS);
+	const at = near.timeS + (holdRpm - near.rpm) / rate;
+	return Math.min(Math.max(Number.isFinite(at) ? at : within[0], within[0]), within[1]);
+}
+
+/**
+ * The samples of a ramp between two turns, without a hold beside it (an idle or a full-load hold). Blocks are too coarse for where
+ * a ramp begins, so the lines of ramp and hold tell it. A turn from up to down is no hold: its mean stands still for one block only.
+ */
+function withoutHolds(
+	time: Float64Array,
+	speed: Float64Array,
+	means: readonly Mean[],
+	low: number,
+	high: number
+): { from: number; to: number } {
+	const rate = (a: number, b: number) =>
+		(means[b]!.rpm - means[a]!.rpm) / (means[b]!.timeS - means[a]!.timeS);
+	const usual = middle(Array.from({ length: high - low }, (_, k) => Math.abs(rate(low + k, low + k + 1))));
+	const still = (a: number, b: number) =>
+		Math.abs(rate(Math.min(a, b), Math.max(a, b))) < END_RATE_SHARE * usual;
+	/** The block on one side (−1 before, 1 after) where a hold begins; null where there is none. */
+	const holdFrom = (end: number, side: 1 | -1): number | null => {
+		let block = end;
+		while (block !== (side === 1 ? low : high) && still(block - side, block)) block -= side;
+		let length = 0;
+		while (means[block + side * (length + 1)] && still(block + side * length, block + side * (length + 1)))
+			length++;
+		return length >= 2 ? block : null;
+	};
+	const [before, after] = [holdFrom(low, -1), holdFrom(high, 1)];
+	const sign = means[high]!.rpm > means[low]!.rpm ? 1 : -1;
+	const turn = (block: number, extreme: 1 | -1) =>
+		extremeSample(
+			speed,
+			means[Math.max(block - 1, 0)]!.from,
+			means[Math.min(block + 1, means.length - 1)]!.to,
+			extreme
+		);
+	let from = before === null && low > 0 ? turn(low, sign === 1 ? -1 : 1) : means[before ?? low]!.from;
+	let to = after === null && high < means.length - 1 ? turn(high, sign) + 1 : means[after ?? high]!.to;
+	if ((after ?? high) - (before ?? low) < 5) return { from, to };
+	if (before !== null) {
+		const [hold, near, far] = [means[before - 1]!, means[before + 2]!, means[before + 3]!];
+		const start = meeting(hold.rpm, near, far, [time[hold.from]!, near.timeS]);
+		while (from < to && time[from]! < start) from++;
+	}
+	if (after !== null) {
+		const [hold, near, far] = [means[after + 1]!, means[after - 2]!, means[after - 3]!];
+		const stop = meeting(hold.rpm, near, far, [near.timeS, time[hold.to - 1]!]);
+		while (to > from && time[to - 1]! > stop) to--;
+	}
+	return { from, to };
+}
+
+const TURN_SAMPLES = 9;
+
+/** The sample at which the speed turns, by a mean over a few samples. */
+function extremeSample(speed: Float64Array, from: number, to: number, sign: 1 | -1): number {
+	const half = Math.min(TURN_SAMPLES >> 1, Math.floor((to - from) / 8));
+	let best = from;
+	let most = -Infinity;
+	for (let i = from + half; i < to - half; i++) {
+		let sum = 0;
+		for (let k = i - half; k <= i + half; k++) sum += speed[k]!;
+		if (sign * sum > most) {
+			most = sign * sum;
+			best = i;
+		}
+	}
+	return best;
+}
+
+function middle(values: readonly number[]): number {
+	const sorted = [...values].sort((a, b) => a - b);
+	return sorted[sorted.length >> 1] ?? 0;
 }
 
 function speedsAtEnds(time: Float64Array, speed: Float64Array, from: number, to: number): [number, number] {
@@ -113,20 +177,14 @@ export function findRamps(time: Float64Array, speed: Float64Array): Ramp[] {
 	const points = turns(means, TURN_SHARE * (hi - lo));
 	const ramps: Ramp[] = [];
 	for (let k = 1; k < points.length; k++) {
-		const whole = means.slice(points[k - 1], points[k]! + 1);
-		if (whole.length < 3) continue;
-		const part = trimmed(whole);
-		const [first, last] = [part[0]!, part.at(-1)!];
-		const speeds = speedsAtEnds(time, speed, first.from, last.to);
+		const [low, high] = [points[k - 1]!, points[k]!];
+		if (high - low < 2) continue;
+		const { from, to } = withoutHolds(time, speed, means, low, high);
+		const speeds = speedsAtEnds(time, speed, from, to);
 		if (speeds[1] - speeds[0] < LEAST_SPAN * hi) continue;
-		const rate = (last.rpm - first.rpm) / (last.timeS - first.timeS);
-		ramps.push({
-			direction: rate > 0 ? 'up' : 'down',
-			from: first.from,
-			to: last.to,
-			rateRpmS: rate,
-			speeds
-		});
+		const sign = means[high]!.rpm > means[low]!.rpm ? 1 : -1;
+		const rateRpmS = (sign * (speeds[1] - speeds[0])) / (time[to - 1]! - time[from]!);
+		ramps.push({ direction: sign > 0 ? 'up' : 'down', from, to, rateRpmS, speeds });
 	}
 	return ramps;
 }
