@@ -22,6 +22,8 @@ export const instant = z.iso
 	.transform((text) => new Date(text));
 /** A clock time as it is answered; text already where an answer is remembered and sent again. */
 export const instantOut = z.union([z.date().transform((date) => date.toISOString()), z.iso.datetime()]);
+/** Units as scripts read them, in plain letters: rev/min is `rpm` there. */
+export const unitOut = z.string().transform((unit) => (unit === 'rev/min' ? 'rpm' : unit));
 export const reason = z.string().trim().max(1000, 'at most 1000 characters');
 
 /** Points of a line over speed: finite, speeds rising. */

@@ -38,7 +38,7 @@ export const NewRun = z.object({
 const Span = z.tuple([z.number(), z.number()]);
 const MetricView = z.object({
 	value: z.number(),
-	unit: z.string(),
+	unit: fields.unitOut,
 	u: z.number().nullable(),
 	at: z.record(z.string(), z.number()).nullable(),
 	method: z.string(),
@@ -53,7 +53,7 @@ const TraceView = z.object({
 	sha256: z.string(),
 	rows: z.number().nullable(),
 	sampleRateHz: z.number().nullable(),
-	channels: z.array(z.object({ code: z.string(), header: z.string(), unit: z.string() })).nullable(),
+	channels: z.array(z.object({ code: z.string(), header: z.string(), unit: fields.unitOut })).nullable(),
 	findings: z.array(
 		z.object({
 			code: z.string(),

@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { encodeWindow, openColumnar, type TraceWindow } from '$lib/domain/trace';
 import type { Curve } from '$lib/domain/model';
 import type { Principal } from '../access';
+import { fields } from '../api';
 import { reading } from '../db';
 import type { Deps } from '../deps';
 import { badRequest, notFound, Problem } from '../problem';
@@ -17,7 +18,7 @@ export const WindowQuery = z.object({
 });
 
 const Extremes = z.object({
-	unit: z.string(),
+	unit: fields.unitOut,
 	lo: z.array(z.number().nullable()),
 	hi: z.array(z.number().nullable())
 });

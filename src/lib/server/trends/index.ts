@@ -31,7 +31,7 @@ export const TrendQuery = z.object({
 
 export const TrendView = z.object({
 	metric: z.string(),
-	unit: z.string().nullable(),
+	unit: fields.unitOut.nullable(),
 	groups: z.array(
 		z.object({
 			key: z.string(),
