@@ -3,7 +3,7 @@ import { existsSync, mkdirSync, readFileSync, readdirSync, writeFileSync } from 
 import path from 'node:path';
 import { Mendable } from './place.js';
 
-export const isRoot = process.getuid?.() === 0;
+const isRoot = process.getuid?.() === 0;
 
 const OLDEST_POSTGRES = 15;
 

@@ -14,7 +14,7 @@ const runFile = path.join(localFolder, 'run.json');
 const lockFile = path.join(localFolder, 'launcher.lock');
 
 /** @returns {RunState | null} */
-export function readRunState() {
+function readRunState() {
 	const state = /** @type {RunState | null} */ (readJson(runFile));
 	return state && typeof state.launcher?.pid === 'number' ? state : null;
 }

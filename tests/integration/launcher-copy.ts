@@ -14,7 +14,7 @@ export interface Launched {
 	ended: Promise<number | null>;
 }
 
-export interface RunState {
+interface RunState {
 	launcher: { pid: number };
 	ready: boolean;
 	address: string;

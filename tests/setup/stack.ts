@@ -47,7 +47,7 @@ export interface Stack {
 }
 
 /** The built server, a worker and a mail catcher on random ports, over a database and a bucket of their own. */
-export async function startStack(extra: Record<string, string> = {}): Promise<Stack> {
+async function startStack(extra: Record<string, string> = {}): Promise<Stack> {
 	const database = await createDatabase();
 	const folder = path.join(testServices().home, 'stacks', database.name);
 	mkdirSync(folder, { recursive: true });
