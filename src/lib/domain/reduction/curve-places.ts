@@ -48,17 +48,17 @@ export function rowPlaces(
 			if (!values) return null;
 			let best = -1;
 			for (let i = 0; i < values.length; i++)
-				if (!Number.isNaN(values[i]!) && (best < 0 || sign * values[i]! > sign * values[best]!)) best = i;
+				if (Number.isFinite(values[i]!) && (best < 0 || sign * values[i]! > sign * values[best]!)) best = i;
 			if (best < 0) return null;
 			return { value: values[best]!, u: scatter?.(code, best) ?? null, key: best, at: at(best) };
 		},
 		valueAt(code, place) {
 			const value = columns.get(code)?.[place.key] ?? NaN;
-			return Number.isNaN(value) ? null : { value, u: scatter?.(code, place.key) ?? null };
+			return !Number.isFinite(value) ? null : { value, u: scatter?.(code, place.key) ?? null };
 		}
 	};
 }
 
 function finite<K extends string>(key: K, value: number | undefined): Partial<Record<K, number>> {
-	return value === undefined || Number.isNaN(value) ? {} : ({ [key]: value } as Record<K, number>);
+	return value === undefined || !Number.isFinite(value) ? {} : ({ [key]: value } as Record<K, number>);
 }

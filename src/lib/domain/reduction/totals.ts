@@ -94,6 +94,6 @@ function addElectrical(
 export function highestRow(values: Float64Array): number {
 	let best = -1;
 	for (let i = 0; i < values.length; i++)
-		if (!Number.isNaN(values[i]!) && (best < 0 || values[i]! > values[best]!)) best = i;
+		if (Number.isFinite(values[i]!) && (best < 0 || values[i]! > values[best]!)) best = i;
 	return best;
 }

@@ -23,7 +23,11 @@ const IDLE_SHARE = 0.02;
 
 function each(rows: number, value: (i: number) => number): Float64Array {
 	const values = new Float64Array(rows);
-	for (let i = 0; i < rows; i++) values[i] = value(i);
+	for (let i = 0; i < rows; i++) {
+		const made = value(i);
+		// A ratio to next to nothing has no value that means anything.
+		values[i] = Number.isFinite(made) ? made : NaN;
+	}
 	return values;
 }
 
