@@ -1,6 +1,14 @@
 import { spawn } from 'node:child_process';
 import { createHash } from 'node:crypto';
-import { existsSync, readFileSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
+import {
+	existsSync,
+	lstatSync,
+	readFileSync,
+	readdirSync,
+	realpathSync,
+	rmSync,
+	writeFileSync
+} from 'node:fs';
 import path from 'node:path';
 import { readText } from './launcher-state.js';
 import { Mendable, localFolder, root } from './place.js';
@@ -56,6 +64,13 @@ export async function ensurePackages() {
 		writeFileSync(mark, lockHash);
 		return;
 	}
+	const folder = path.join(root, 'node_modules');
+	// npm would empty the folder that the link leads to, which is another clone's.
+	if (lstatSync(folder, { throwIfNoEntry: false })?.isSymbolicLink())
+		throw new Mendable(
+			`The packages in ${realpathSync(folder)} are not those of this clone's lockfile, and ${folder} is only a link to them. ` +
+				'Remove the link, or run npm ci where it leads.'
+		);
 	console.error('Installing packages …');
 	rmSync(mark, { force: true });
 	const { code, output } = await runToEnd([

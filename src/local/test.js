@@ -121,7 +121,12 @@ async function runSuite(suite, folder, env) {
 async function run(folder) {
 	const began = performance.now();
 	/** @type {Record<string, string | undefined>} */
-	const env = { ...process.env, NODE_ENV: undefined, TRUNNION_LONG: values.long ? '1' : undefined };
+	const env = {
+		...process.env,
+		NODE_ENV: undefined,
+		TRUNNION_LONG: values.long ? '1' : undefined,
+		AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: 'true'
+	};
 	const needsServices = ['integration', 'browser', 'bench'].some(wanted);
 	if (wanted('browser')) env.TRUNNION_TEST_CHROMIUM = chromium();
 	// Types of the routes, which lint and types read and the build writes too.
@@ -153,7 +158,8 @@ async function main() {
 		await run(folder);
 		outcomes.sort((a, b) => STEPS.indexOf(a.name) - STEPS.indexOf(b.name));
 		const result = summary(outcomes);
-		if (result.failed) result.lines.splice(-2, 0, `Logs and what was left of the tests: ${folder}`);
+		if (interrupted) result.lines.splice(-2, 0, 'The run was broken off.');
+		else if (result.failed) result.lines.splice(-2, 0, `Logs and what was left of the tests: ${folder}`);
 		failed = interrupted ? 1 : result.failed;
 		await stopServices(services);
 		console.log(result.lines.join('\n'));
