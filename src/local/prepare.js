@@ -56,11 +56,8 @@ export async function ensurePackages() {
 		.digest('hex');
 	const mark = path.join(localFolder, 'packages.sha256');
 	const installed = path.join(root, 'node_modules', '.package-lock.json');
-	// Packages that someone installed by hand before the first start count too, when they are those of the lockfile.
-	if (
-		existsSync(installed) &&
-		(readText(mark) === lockHash || (readText(mark) === null && isSameTree(installed)))
-	) {
+	// Packages that someone installed by hand count too, when they are those of the lockfile.
+	if (existsSync(installed) && (readText(mark) === lockHash || isSameTree(installed))) {
 		writeFileSync(mark, lockHash);
 		return;
 	}

@@ -44,6 +44,7 @@ export function useCopy() {
 			cpSync(path.join(root, name), path.join(folder, name));
 		cpSync(path.join(root, '.svelte-kit/tsconfig.json'), path.join(folder, '.svelte-kit/tsconfig.json'));
 		cpSync(path.join(root, 'build'), path.join(folder, 'build'), { recursive: true });
+		// The launcher installs nothing through a link; it only has to find that the packages are those of the lockfile.
 		symlinkSync(path.join(root, 'node_modules'), path.join(folder, 'node_modules'));
 	});
 	// A failed test must not leave its launcher to the next one.

@@ -139,7 +139,7 @@ describe('a private cluster', () => {
 describe('a start', () => {
 	const copy = useCopy();
 
-	it('gives operators a token alone, refuses a second, and leaves nothing on Ctrl-C', async () => {
+	it('gives operators a token alone, running or not, refuses a second, and leaves nothing on Ctrl-C', async () => {
 		const port = String(await freePort());
 		const run = copy.run(['npm', 'start'], { PORT: port });
 		await run.saying('Started in');
@@ -187,6 +187,22 @@ describe('a start', () => {
 		expect(pids.filter((pid) => existsSync(`/proc/${pid}`))).toEqual([]);
 		expect(processesIn(copy.folder)).toEqual([]);
 		expect(existsSync(path.join(copy.folder, '.local/run.json'))).toBe(false);
+
+		const asleep = copy.run([
+			'npm',
+			'run',
+			'admin',
+			'--',
+			'token',
+			'add',
+			'--email',
+			email,
+			'--label',
+			'later'
+		]);
+		expect(await asleep.ended).toBe(0);
+		expect(asleep.output()).toMatch(/^\S+\n$/);
+		expect(processesIn(copy.folder)).toEqual([]);
 	}, 180_000);
 
 	it('that is killed outright takes all with it; the next one builds nothing anew', async () => {
