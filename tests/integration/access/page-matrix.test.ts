@@ -61,6 +61,7 @@ const TOLD: Record<string, { read: Action | null; id?: keyof Things; actions?: R
 		actions: { close: 'run.open', accept: 'run.review', void: 'run.review', flag: 'run.flag', log: 'run.log' }
 	},
 	'/runs/new': { read: 'run.open', actions: { default: 'run.open' } },
+	'/schedule': { read: 'schedule.read' },
 	'/trends': { read: 'trend.read' }
 };
 

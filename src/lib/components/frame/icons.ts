@@ -2,6 +2,7 @@
 export const ICONS = {
 	runs: 'M3 3v14h14M5.5 13c2-5.5 4.5-7.5 7-7.5 1.8 0 3 1 4 3M5.5 10.5c3-1.5 7-1.8 11 1.5',
 	builds: 'M4 7.5 10 4l6 3.5v6L10 17l-6-3.5zM4 7.5l6 3.5 6-3.5M10 11v6',
+	schedule: 'M3 3.5h14v13H3zM3 7.5h14M10 7.5v9M5 11h3M12 13.5h3',
 	bookings: 'M3 4.5v11M17 4.5v11M3 7h6v2.5H3zM8 12h7v2.5H8z',
 	trends: 'M3 3v14h14M7 8v5M7 10.5h.01M11 6.5v4M11 8.5h.01M15 4v5M15 6.5h.01',
 	lab: 'M2.5 7h5v6h-5zM12.5 6h5v8h-5zM7.5 10h5M2 16.5h16',

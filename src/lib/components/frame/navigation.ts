@@ -10,6 +10,7 @@ export interface Place {
 export const PLACES: readonly Place[] = [
 	{ href: '/runs', label: 'Runs', icon: 'runs' },
 	{ href: '/builds', label: 'Builds', icon: 'builds' },
+	{ href: '/schedule', label: 'Schedule', icon: 'schedule' },
 	{ href: '/bookings', label: 'Bookings', icon: 'bookings' },
 	{ href: '/trends', label: 'Trends', icon: 'trends' },
 	{ href: '/lab', label: 'Lab', icon: 'lab' }

@@ -1,6 +1,15 @@
 export { absorberRemarks, type Remark } from './absorber';
 export { firstFit } from './first-fit';
 export { instantOrDayFromIso } from './instants';
-export { covers, mergeIntervals, minutesOf, plusMinutes, withRigTime, type Interval } from './intervals';
+export {
+	covers,
+	mergeIntervals,
+	minutesOf,
+	plusMinutes,
+	subtractIntervals,
+	withRigTime,
+	type Interval
+} from './intervals';
 export { openIntervals, type OpeningHour } from './opening-hours';
+export { isDay, offsetText, SCHEDULE_VIEWS, shownDays, type ScheduleView } from './shown-days';
 export { instantInWords, spanInWords } from './words';

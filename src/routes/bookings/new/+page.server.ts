@@ -11,7 +11,8 @@ import { labInstant, pageData, personMay, refused } from '$lib/server/web';
 import type { Actions, PageServerLoad } from './$types';
 
 const LISTED = 200;
-const wallClock = (sentence: string) => z.string().regex(/^\d{4}-\d\d-\d\dT\d\d:\d\d(:\d\d)?$/, sentence);
+const WALL_CLOCK = /^\d{4}-\d\d-\d\dT\d\d:\d\d(:\d\d)?$/;
+const wallClock = (sentence: string) => z.string().regex(WALL_CLOCK, sentence);
 
 /** Flat, as a form is; text for what may be left empty. */
 const BookingForm = z.object({
@@ -34,9 +35,12 @@ export const load: PageServerLoad = async ({ locals, url }) => {
 			listFuelBatches(deps, who, { limit: LISTED })
 		]);
 		const asked = (name: string) => url.searchParams.get(name) ?? '';
+		const askedTime = (name: string) => (WALL_CLOCK.test(asked(name)) ? asked(name) : '');
 		const start = {
 			build: builds.items.find(({ id, number }) => [id, number].includes(asked('build')))?.id ?? '',
-			cell: cells.find(({ id, code }) => [id, code].includes(asked('cell')))?.id ?? ''
+			cell: cells.find(({ id, code }) => [id, code].includes(asked('cell')))?.id ?? '',
+			from: askedTime('from'),
+			to: askedTime('to')
 		};
 		return {
 			form: await superValidate(start, zod4(BookingForm), { errors: false }),

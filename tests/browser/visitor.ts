@@ -1,0 +1,52 @@
+import type { Browser, BrowserContextOptions, Page } from 'playwright-core';
+import { PASSWORD } from './people';
+
+/** What browsers said that they should not have: failed scripts, refused styles, missing files. */
+export class Complaints {
+	readonly said: string[] = [];
+	/** An address that answers with an error on purpose. */
+	readonly expected = new Set<string>();
+
+	listenTo(page: Page): void {
+		page.on('pageerror', (error) => this.said.push(`${page.url()}: ${error.stack ?? error.message}`));
+		page.on('console', (message) => {
+			if (message.type() !== 'error' || this.expected.has(message.location().url)) return;
+			this.said.push(`${page.url()}: ${message.text()} (${message.location().url})`);
+		});
+	}
+}
+
+/** A browser of its own for one person; its clock is not the laboratory's, as with people who travel. */
+export async function openVisitor(
+	browser: Browser,
+	origin: string,
+	complaints: Complaints,
+	options: BrowserContextOptions = {}
+): Promise<Page> {
+	const context = await browser.newContext({
+		baseURL: origin,
+		viewport: { width: 1280, height: 900 },
+		locale: 'en-GB',
+		timezoneId: 'America/Los_Angeles',
+		reducedMotion: 'reduce',
+		...options
+	});
+	context.setDefaultTimeout(30_000);
+	// A refusal by the content security policy is told by an event too, also where a browser keeps its console quiet.
+	await context.addInitScript(() => {
+		document.addEventListener('securitypolicyviolation', (event) =>
+			console.error(`refused by ${event.violatedDirective}: ${event.blockedURI} ${event.sample}`)
+		);
+	});
+	const page = await context.newPage();
+	complaints.listenTo(page);
+	return page;
+}
+
+export async function signIn(page: Page, email: string): Promise<void> {
+	await page.goto('/sign-in', { waitUntil: 'networkidle' });
+	await page.getByLabel('Mail address').fill(email);
+	await page.getByLabel('Password').fill(PASSWORD);
+	await page.getByRole('button', { name: 'Sign in' }).click();
+	await page.waitForURL((url) => url.pathname !== '/sign-in');
+}
