@@ -245,6 +245,13 @@ describe('other kinds', () => {
 		expect(analysed.sampleRateHz).toBeNull();
 	});
 
+	it('a time column orders nothing in a table of points, and loses no row', () => {
+		const timed = 'Time,speed [rpm],torque [Nm]\n14:40:00,1200,100\n09:15:00,1500,140\n,1800,120\n';
+		const analysed = readyOf(analyse(timed, { kind: 'point_table' }));
+		expect(analysed.points.map(({ speed }) => speed)).toEqual([1200, 1500, 1800]);
+		expect(analysed.sampleRateHz).toBeNull();
+	});
+
 	it.each(['motoring', 'endurance'] as const)('%s is read as a log, and says so', (kind) => {
 		const analysed = readyOf(analyse(sweep(HEADER, three), { kind }));
 		expect(analysed.findings.map(({ code }) => code)).toContain('kind_not_reduced');

@@ -95,7 +95,7 @@ function withConfidence(trace: Trace, proposal: readonly ProposedColumn[], byPer
  *
  * @param bytes the file as uploaded
  * @param context the run's kind, engine, cell, fuel, ambient, correction, settings, rules and, where a person made one, channel map
- * @param file its name, for messages only
+ * @param _file its name; the answer does not depend on it
  * @returns `ready` with everything, `needs_map` with a question, or `refused` with what is wrong and what to do
  */
 export function analyseFile(bytes: Uint8Array, context: RunContext, _file: { name: string }): AnalysedFile {

@@ -17,6 +17,9 @@ export type Decoded =
 
 const SNIFF_BYTES = 1 << 16;
 
+/** What one string of the language can hold, with room to spare. */
+const MOST_BYTES = 500e6;
+
 const EMPTY =
 	'The file is empty. Look at the measuring system for the recording, export it again and upload that file.';
 
@@ -171,6 +174,11 @@ function looksLikeText(text: string): boolean {
  */
 export function decode(bytes: Uint8Array): Decoded {
 	if (bytes.length === 0 || bytes.every((byte) => byte === 0)) return { ok: false, error: EMPTY };
+	if (bytes.length > MOST_BYTES)
+		return {
+			ok: false,
+			error: `The file is ${Math.round(bytes.length / 1e6)} MB; up to ${MOST_BYTES / 1e6} MB can be read. Split the recording, or export only the channels that this run needs.`
+		};
 	const known = SIGNATURES.find(([head]) => startsWith(bytes, head));
 	if (known) return { ok: false, error: known[1] };
 	const decoded = decodeBytes(bytes);

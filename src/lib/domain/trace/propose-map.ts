@@ -124,6 +124,11 @@ function chooseTime(proposed: ProposedColumn[], table: Table): void {
 	});
 }
 
+/** Rows of a table of points are no samples of a clock; when each was taken is kept, and orders nothing. */
+function leaveTime(proposed: ProposedColumn[]): void {
+	for (const column of proposed) if (column.guess === 'time') column.guess = null;
+}
+
 function sameValues(a: TableColumn | undefined, b: TableColumn | undefined): boolean {
 	return a !== undefined && b !== undefined && a.values.every((value, i) => Object.is(value, b.values[i]));
 }
@@ -193,7 +198,8 @@ function markQuestions(proposed: ProposedColumn[], kind: RunKind): void {
  */
 export function proposeMap(table: Table, kind: RunKind): ProposedColumn[] {
 	const proposed = table.columns.map(proposeColumn);
-	chooseTime(proposed, table);
+	if (kind === 'point_table') leaveTime(proposed);
+	else chooseTime(proposed, table);
 	settleDoubles(proposed, table);
 	markQuestions(proposed, kind);
 	return proposed;
