@@ -16,8 +16,6 @@ export const PLACES: readonly Place[] = [
 	{ href: '/lab', label: 'Lab', icon: 'lab' }
 ];
 
-export const ACCOUNT: Place = { href: '/account', label: 'Account', icon: 'account' };
-
 /** Whether `path` lies at or below `href`; `/runsheet` does not lie below `/runs`. */
 export function liesBelow(path: string, href: string): boolean {
 	return path === href || path.startsWith(`${href}/`);
