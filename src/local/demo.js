@@ -6,7 +6,7 @@ export const DEMO_STAFF = ['admin', 'manager', 'engineer', 'builder', 'operator'
 	(role) => `${role}@fellmoor.example`
 );
 
-export const DEMO_CUSTOMERS = [
+export const DEMO_CLIENTS = [
 	'merrin@quillmere.example',
 	'aldous@brackvolt.example',
 	'sunniva@larkhollow.example',

@@ -1,6 +1,6 @@
 import path from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
-import { DEMO_CUSTOMERS, DEMO_PASSWORD, DEMO_STAFF, wantsDemo } from './demo.js';
+import { DEMO_CLIENTS, DEMO_PASSWORD, DEMO_STAFF, wantsDemo } from './demo.js';
 import { webSettings } from './environment.js';
 import { endLeftovers, forgetRunState, takeLauncherPlace, writeRunState } from './launcher-state.js';
 import { watchForErrors } from './log-watch.js';
@@ -171,7 +171,7 @@ function greet(isDemo) {
 		lines.push(
 			`Demo sign-ins, all with the password "${DEMO_PASSWORD}":`,
 			`  staff      ${DEMO_STAFF.join(' ')}`,
-			`  customers  ${DEMO_CUSTOMERS.join(' ')}`
+			`  clients    ${DEMO_CLIENTS.join(' ')}`
 		);
 	if (state.mailPage) lines.push(`Mail that it sends is caught and shown at ${state.mailPage}`);
 	lines.push('Ctrl-C stops everything.');
