@@ -3,11 +3,14 @@ import { createServer, type AddressInfo } from 'node:net';
 import path from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
 import pg from 'pg';
-import { describe, expect, it } from 'vitest';
+import { describe, expect, it, vi } from 'vitest';
 import { DEMO_PASSWORD, DEMO_PEOPLE } from '../../src/lib/server/demo/lab/people';
 import * as demo from '../../src/local/demo.js';
 import { freePort } from '../../src/local/processes.js';
 import { processesIn, useCopy } from './launcher-copy';
+
+// Starts are quick, but a machine that is busy with other suites need not be.
+vi.setConfig({ testTimeout: 180_000 });
 
 const start = ['node', 'src/local/start.js'];
 const servicesOnly = [...start, '--services-only'];
@@ -203,7 +206,7 @@ describe('a start', () => {
 		expect(await asleep.ended).toBe(0);
 		expect(asleep.output()).toMatch(/^\S+\n$/);
 		expect(processesIn(copy.folder)).toEqual([]);
-	}, 180_000);
+	});
 
 	it('that is killed outright takes all with it; the next one builds nothing anew', async () => {
 		const run = copy.run(start, { PORT: String(await freePort()) });
