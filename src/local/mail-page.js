@@ -45,8 +45,9 @@ dl { display: grid; grid-template-columns: auto 1fr; gap: 0.25rem 1rem; margin: 
 dd { margin: 0; overflow-wrap: anywhere; }
 pre, iframe, p.empty { background: var(--sheet); border: 1px solid var(--rule); padding: 1rem; margin: 0 0 1rem; }
 pre { white-space: pre-wrap; overflow-wrap: anywhere; font: inherit; }
-iframe { width: 100%; height: 28rem; padding: 0; background: #fff; }
+iframe { width: 100%; height: 18rem; padding: 0; background: #fff; }
 h2 { font-size: 1rem; margin: 1.5rem 0 0.5rem; }
+@media (max-width: 40rem) { li.mail { grid-template-columns: 1fr; } }
 `;
 
 /**
