@@ -14,7 +14,7 @@ export function seeded(seed: number): () => number {
 const gauss = (random: () => number) =>
 	Math.sqrt(-2 * Math.log(1 - random())) * Math.cos(2 * Math.PI * random());
 
-export const LHV = 42.7;
+const LHV = 42.7;
 const INERTIA_TO_NM = (2 * Math.PI) / 60;
 
 export interface Engine {

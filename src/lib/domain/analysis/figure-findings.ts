@@ -10,6 +10,7 @@ import { suggestFuelUnit } from './fuel-unit';
 const BTE_SUSPECT = 0.55;
 const BTE_IMPLAUSIBLE = 0.65;
 const BTE_LEAST = 0.18;
+const FEW_SHARE = 0.2;
 /** Points below this are part load, where a low efficiency is no wonder. */
 const LOADED_BMEP_KPA = 500;
 const LAMBDA_APART = 0.03;
@@ -17,10 +18,12 @@ const POWER_APART = 0.01;
 
 type Values = Record<'bte' | 'lambda_flow' | 'lambda_sensor', number[]>;
 
+const isReducedTo = (curve: Reduced['curve']) => Object.keys(curve).length > 0;
+
 /** Values under load: of the reduced curve or points where there are any, else of the samples above half the highest power. */
 function underLoad(trace: Trace, reduced: Reduced): Values {
 	const { curve } = reduced;
-	if ((curve['speed']?.length ?? 0) > 0) {
+	if (isReducedTo(curve)) {
 		const of = (code: string) => (curve[code] ?? []).map((value) => value ?? NaN);
 		return { bte: of('bte'), lambda_flow: of('lambda_flow'), lambda_sensor: of('lambda_sensor') };
 	}
@@ -49,24 +52,30 @@ function efficiencyFindings(
 	const bte = known(values.bte);
 	if (bte.length === 0) return [];
 	// Samples scatter; means of bins and points do not, so there the highest counts.
-	const top = reduced ? Math.max(...bte) : quantile(bte, 0.95);
+	const top = reduced ? bte.reduce((a, b) => Math.max(a, b)) : quantile(bte, 0.95);
 	const low = reduced && top < BTE_LEAST && (context.kind === 'power_sweep' || bmepMax >= LOADED_BMEP_KPA);
 	if (top <= BTE_SUSPECT && !low) return [];
 	const implausible = low || top > BTE_IMPLAUSIBLE;
-	const lambdaRatio = medianRatio(values);
-	const suggestion = implausible
-		? suggestFuelUnit(columnOf(trace, 'fuel_flow'), top, lambdaRatio, context.fuel)
-		: null;
+	// Where few stick out, a wrong unit is not the cause, but a bad reading.
+	const above = bte.filter((value) => value > BTE_SUSPECT).length;
+	const some =
+		!low && reduced && above <= FEW_SHARE * bte.length ? ` in ${above} of ${bte.length} points` : '';
+	const suggestion =
+		implausible && some === ''
+			? suggestFuelUnit(columnOf(trace, 'fuel_flow'), top, medianRatio(values), context.fuel)
+			: null;
 	const cause = suggestion
 		? ` If the column “${suggestion.header}” were in ${suggestion.unit} instead of ${suggestion.mappedUnit}, it would be ${percent(suggestion.bte)}: the unit is probably wrong.`
-		: implausible
-			? ' A unit, the heating value or a calibration is probably wrong.'
-			: ' Check the fuel meter, the heating value and the torque.';
+		: some !== ''
+			? ' The others are plausible: look for a bad reading of the fuel or the torque there.'
+			: implausible
+				? ' A unit, the heating value or a calibration is probably wrong.'
+				: ' Check the fuel meter, the heating value and the torque.';
 	return [
 		{
 			code: implausible ? 'bte_implausible' : 'bte_suspect',
 			severity: 'warning',
-			message: `The brake thermal efficiency ${low ? 'reaches only' : 'comes to'} ${percent(top)}, ${
+			message: `The brake thermal efficiency ${low ? 'reaches only' : 'comes to'} ${percent(top)}${some}, ${
 				low
 					? 'too low for full load'
 					: implausible
@@ -150,7 +159,7 @@ export function figureFindings(
 	context: RunContext
 ): Finding[] {
 	const values = underLoad(trace, reduced);
-	const isReduced = (reduced.curve['speed']?.length ?? 0) > 0;
+	const isReduced = isReducedTo(reduced.curve);
 	return [
 		...efficiencyFindings(values, trace, context, isReduced, reduced.metrics['bmep_max']?.value ?? 0),
 		...lambdaFindings(values),

@@ -1,2 +1,2 @@
 export { analyseFile, METHOD_VERSION, type AnalysedFile } from './analyse';
-export { describeFile, type DescribedFile } from './describe';
+export { describeFile } from './describe';

@@ -9,7 +9,7 @@ const LEAST_SAMPLES = 5;
 const LONGEST_GAP_STEPS = 5;
 
 /** Straight lines between the known samples of a sparse channel, not across holes of its own. */
-export function joinSparse(time: Float64Array, values: Float64Array): Float64Array {
+function joinSparse(time: Float64Array, values: Float64Array): Float64Array {
 	let count = 0;
 	for (let i = 0; i < values.length; i++) if (values[i] === values[i]) count++;
 	if (count < LEAST_SAMPLES || count > SPARSE_SHARE * values.length) return values;

@@ -15,7 +15,7 @@ export const FACTOR = 64;
 
 export type FloatType = 'f32' | 'f64';
 
-export interface StoredLevel {
+interface StoredLevel {
 	/** Samples in a block. */
 	block: number;
 	count: number;

@@ -10,9 +10,9 @@ import {
 } from './columnar-format';
 
 /** Reads a stretch of the stored object. */
-export type ReadRange = (from: number, length: number) => Promise<Uint8Array>;
+type ReadRange = (from: number, length: number) => Promise<Uint8Array>;
 
-export interface WindowRequest {
+interface WindowRequest {
 	/** Codes of the channels wanted. */
 	channels: readonly string[];
 	/** s on the trace clock; left out, the trace's own ends. Samples at both ends belong to the window. */
@@ -22,7 +22,7 @@ export interface WindowRequest {
 	points: number;
 }
 
-export interface WindowChannel {
+interface WindowChannel {
 	code: string;
 	unit: string;
 	/** Lowest and highest known sample of each bucket; null where a bucket has none. Equal where the answer is samples. */
@@ -43,7 +43,7 @@ export interface TraceWindow {
 	channels: WindowChannel[];
 }
 
-export interface OpenColumnar {
+interface OpenColumnar {
 	rows: number;
 	channels: ChannelInfo[];
 	/** First and last time, s. */

@@ -27,10 +27,6 @@ export function columnOf(trace: Trace, code: string): TraceColumn | null {
 	);
 }
 
-export function valuesOf(trace: Trace, code: string): Float64Array | null {
-	return columnOf(trace, code)?.values ?? null;
-}
-
 /** All columns of a channel, indexed or not. */
 export function columnsOf(trace: Trace, base: string): TraceColumn[] {
 	return trace.columns.filter((column) => splitCode(column.code).base === base);
