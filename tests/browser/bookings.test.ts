@@ -280,7 +280,7 @@ describe('a slot', () => {
 			expect(html, secret).not.toContain(secret);
 		await rival.goto(`/schedule?view=day&date=${from.toISODate()}`, { waitUntil: 'networkidle' });
 		expect(await rival.getByRole('region', { name: /list/ }).innerText()).toContain('Taken');
-		await rival.locator('.entry-taken').first().waitFor();
+		await rival.locator('.calendar .entry-taken').first().waitFor();
 		for (const secret of [booking, build.id, build.number, 'Hallbeck'])
 			expect(await rival.content(), secret).not.toContain(secret);
 		await rival.goto('/bookings');
@@ -292,7 +292,7 @@ describe('a slot', () => {
 describe('the schedule', () => {
 	it('shows a slot where the lab’s clock has it, and leads to its booking', async () => {
 		await client.goto(`/schedule?view=day&date=${from.toISODate()}`, { waitUntil: 'networkidle' });
-		const drawn = client.locator('.entry-confirmed');
+		const drawn = client.locator('.calendar .entry-confirmed');
 		await drawn.waitFor();
 		expect(await drawn.innerText()).toMatch(new RegExp(`${booking}\\s+Confirmed\\s+09:00.*13:00`));
 		await client.getByRole('link', { name: 'Week', exact: true }).click();

@@ -232,10 +232,12 @@ describe('trends', () => {
 
 	it('say what failed, and try again', async () => {
 		const engineer = await signedIn(browser.current, stack.current.origin, 'engineer');
-		await engineer.route(/\/api\/v1\/trends\?/, (route) => route.abort(), { times: 1 });
+		let isCut = true;
+		await engineer.route(/\/api\/v1\/trends\?/, (route) => (isCut ? route.abort() : route.continue()));
 		await engineer.goto(`${stack.current.origin}/trends`);
 		await engineer.getByRole('heading', { name: 'The trend did not load' }).waitFor();
 		await expectAccessible(engineer);
+		isCut = false;
 		await engineer.getByRole('button', { name: 'Try again' }).click();
 		await engineer.getByText('Each dot is a run.').waitFor();
 		await engineer.context().close();

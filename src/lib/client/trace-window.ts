@@ -1,7 +1,7 @@
 import { getJson } from './api';
 
 /** Lowest and highest sample of each bucket; null is a gap. Equal where a bucket holds one sample. */
-export interface Extremes {
+interface Extremes {
 	lo: (number | null)[];
 	hi: (number | null)[];
 }

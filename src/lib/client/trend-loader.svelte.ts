@@ -18,8 +18,6 @@ export interface TrendAnswer {
 	pointsTotal: number;
 }
 
-type Question = Record<'metric' | 'groupBy', string> & Record<string, string>;
-
 /** Fetches what is asked; keeps the last answer until the next has come. */
 export class TrendLoader {
 	answer: TrendAnswer | null = $state.raw(null);
@@ -29,10 +27,13 @@ export class TrendLoader {
 	isLoading = $state(true);
 	#again: () => void = () => {};
 
-	/** @returns ends the call, where another question makes it needless */
-	ask(question: Question): () => void {
+	/**
+	 * @param query of the address, as the API takes it
+	 * @returns ends the call, where another question makes it needless
+	 */
+	ask(query: string, groupBy: string): () => void {
 		const running = new AbortController();
-		this.#again = () => void this.#fetch(question, running.signal);
+		this.#again = () => void this.#fetch(query, groupBy, running.signal);
 		untrack(() => this.#again());
 		return () => running.abort();
 	}
@@ -41,14 +42,14 @@ export class TrendLoader {
 		this.#again();
 	}
 
-	async #fetch(question: Question, signal: AbortSignal) {
+	async #fetch(query: string, groupBy: string, signal: AbortSignal) {
 		this.isLoading = true;
 		this.error = null;
 		try {
-			const answer = await getJson<TrendAnswer>('/trends', { query: question, signal });
+			const answer = await getJson<TrendAnswer>(`/trends?${query}`, { signal });
 			if (signal.aborted) return;
 			this.answer = answer;
-			this.groupBy = question.groupBy;
+			this.groupBy = groupBy;
 		} catch (cause) {
 			if (signal.aborted) return;
 			this.error = cause instanceof ApiError ? cause : new ApiError(0, 'The trend could not be fetched.');

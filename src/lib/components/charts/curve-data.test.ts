@@ -14,6 +14,10 @@ it('sorts by speed, leaves out rows without one and prints fractions in %', () =
 	expect(table.columns.power).toEqual([31, 57]);
 	expect(table.columns.bte).toEqual([null, 33]);
 });
+it('knows points held one after another from a curve', () => {
+	expect(curveTable(CURVE, ['power']).isPoints).toBe(true);
+	expect(curveTable({ speed: [2000, 3000, 4000], power: [31, 57, 88] }, ['power']).isPoints).toBe(false);
+});
 it('has no column for what was not measured', () => {
 	expect(Object.keys(curveTable(CURVE, ['power', 'torque', 'lambda_flow']).columns)).toEqual(['power']);
 });

@@ -32,6 +32,17 @@ describe('curve mark', () => {
 		const gap = curvePaths({ ...CURVE, power: [31, null, 88, 105, 107] })?.power ?? '';
 		expect(gap.match(/M/g)).toHaveLength(2);
 	});
+	it('draws held points as dots, each where it belongs, and joins none of them', () => {
+		const held = {
+			speed: [2000, 2000.4, 1999.8, 4000],
+			torque: [200, 150, 100, 190],
+			power: [42, 31, 21, 80]
+		};
+		const power = curvePaths(held)?.power ?? '';
+		expect(power).not.toContain('L');
+		expect(power.match(/M[\d.]+ [\d.]+h0/g)).toHaveLength(4);
+		expect(power.endsWith(`M${(MARK_WIDTH - 2).toFixed(1)} 2.0h0`)).toBe(true);
+	});
 	it.each([[null], [undefined], [{ speed: [] }], [{ speed: [3000], torque: [100], power: [31] }]])(
 		'is hollow for %j',
 		(curve) => expect(curvePaths(curve)).toBeNull()

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { questionOf } from './question';
+import { queryOf, questionOf } from './question';
 
 const ask = (text: string, metrics = ['peak_power', 'bte_max']) =>
 	questionOf(new URLSearchParams(text), metrics);
@@ -18,6 +18,9 @@ describe('what an address asks of the trends', () => {
 			fuel: 'F1',
 			to: '2026-03-31'
 		});
+	});
+	it('goes to the API without what is not said', () => {
+		expect(queryOf(ask('fuel=F1&cell='))).toBe('metric=bte_max&groupBy=build&fuel=F1');
 	});
 	it('leaves out what is no figure, no group and no date', () => {
 		expect(ask('metric=mood&groupBy=moon&from=spring')).toMatchObject({

@@ -10,8 +10,11 @@ export interface Question {
 	cell: string;
 	from: string;
 	to: string;
-	[name: string]: string;
 }
+
+/** The question as the API is asked: what is not said is left out. */
+export const queryOf = (question: Question): string =>
+	new URLSearchParams(Object.entries(question).filter(([, value]) => value !== '')).toString();
 
 export function groupWord(group: string, isHead = false): string {
 	return isHead ? group.charAt(0).toUpperCase() + group.slice(1) : group;

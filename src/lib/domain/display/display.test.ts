@@ -119,6 +119,14 @@ describe('labels', () => {
 			decimals: 2,
 			percent: false
 		}));
+	it.each([
+		['sd_speed', 'Engine speed, standard deviation', 'rev/min'],
+		['cov_torque', 'Torque, coefficient of variation', '%'],
+		['raw_max_fuel_flow', 'Fuel flow, highest single sample', 'kg/h'],
+		['power_corrected', 'Power, corrected', 'kW']
+	])('say in words what %s is of', (code, label, unit) => {
+		expect(labelOf(code)).toMatchObject({ label, unit });
+	});
 	it('print no unit for a pure number', () => expect(labelOf('lambda_sensor').unit).toBe(''));
 });
 
@@ -151,6 +159,10 @@ describe('a figure', () => {
 	it('does not say a speed twice', () => {
 		const metric = { value: 6516, unit: 'rev/min', u: null, at: { speed: 6516 }, method: 'm' };
 		expect(figureText('peak_power_speed', metric).at).toBeNull();
+	});
+	it('takes what arithmetic leaves over for no uncertainty', () => {
+		const metric = { value: 1.01358969, unit: '–', u: 3.5e-16, at: null, method: 'm' };
+		expect(figureText('correction_factor', metric)).toMatchObject({ value: '1.0136', plusMinus: null });
 	});
 	it('is a dash when there is none', () => expect(figureText('bte_max', null).value).toBe(NONE));
 	it('writes single values', () => {
