@@ -27,11 +27,11 @@ const EMPTY =
 const SIGNATURES: readonly (readonly [bytes: readonly number[], sentence: string])[] = [
 	[
 		[0x50, 0x4b, 0x03, 0x04],
-		'This is an Excel workbook or a zip archive, not a text file. Save the sheet as CSV, or unpack the archive, and upload that.'
+		'This is a spreadsheet workbook (.xlsx) or a zip archive, not a text file. Save the sheet as CSV, or unpack the archive, and upload that.'
 	],
 	[
 		[0xd0, 0xcf, 0x11, 0xe0],
-		'This is an old Excel workbook (.xls), not a text file. Save the sheet as CSV and upload that.'
+		'This is a spreadsheet workbook (.xls), not a text file. Save the sheet as CSV and upload that.'
 	],
 	[
 		[0x25, 0x50, 0x44, 0x46],
@@ -40,19 +40,13 @@ const SIGNATURES: readonly (readonly [bytes: readonly number[], sentence: string
 	[[0x1f, 0x8b], 'This file is compressed (gzip). Unpack it and upload the CSV or text file inside.'],
 	[
 		[0x4d, 0x44, 0x46, 0x20, 0x20],
-		'This is a binary measurement file (MDF). Export it as CSV or text and upload that.'
+		'This is a binary measurement file. Export it as CSV or text and upload that.'
 	],
-	[
-		[0x54, 0x44, 0x53, 0x6d],
-		'This is a binary measurement file (TDMS). Export it as CSV or text and upload that.'
-	],
-	[
-		[0x89, 0x48, 0x44, 0x46],
-		'This is a binary measurement file (HDF5). Export it as CSV or text and upload that.'
-	],
+	[[0x54, 0x44, 0x53, 0x6d], 'This is a binary measurement file. Export it as CSV or text and upload that.'],
+	[[0x89, 0x48, 0x44, 0x46], 'This is a binary measurement file. Export it as CSV or text and upload that.'],
 	[
 		[0x50, 0x41, 0x52, 0x31],
-		'This is a Parquet file, not a text file. Export the samples as CSV or text and upload that.'
+		'This is a binary table (Parquet), not a text file. Export the samples as CSV or text and upload that.'
 	],
 	[[0x89, 0x50, 0x4e, 0x47], 'This is a picture, not a trace. Export the samples as CSV or text.'],
 	[[0xff, 0xd8, 0xff], 'This is a picture, not a trace. Export the samples as CSV or text.']
