@@ -245,7 +245,7 @@ describe('a start', () => {
 
 it('names in its greeting the people that the demo laboratory has', () => {
 	expect(demo.DEMO_PASSWORD).toBe(DEMO_PASSWORD);
-	expect([...demo.DEMO_STAFF, ...demo.DEMO_CUSTOMERS]).toEqual(DEMO_PEOPLE.map(({ email }) => email));
+	expect([...demo.DEMO_STAFF, ...demo.DEMO_CLIENTS]).toEqual(DEMO_PEOPLE.map(({ email }) => email));
 });
 
 it('is written with nothing but what Node.js brings, since it runs before the packages are there', () => {

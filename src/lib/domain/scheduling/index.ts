@@ -11,5 +11,5 @@ export {
 	type Interval
 } from './intervals';
 export { openIntervals, type OpeningHour } from './opening-hours';
-export { isDay, offsetText, SCHEDULE_VIEWS, shownDays, type ScheduleView } from './shown-days';
+export { isDay, offsetText, SCHEDULE_VIEWS, shownDays } from './shown-days';
 export { instantInWords, spanInWords } from './words';

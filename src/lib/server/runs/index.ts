@@ -21,6 +21,5 @@ export {
 	RunListItem,
 	RunQuery,
 	RunView,
-	type RunDetail,
-	type RunRow
+	type RunDetail
 } from './schemas';
