@@ -7,7 +7,7 @@ describe('an answer that failed', () => {
 			title: 'Bad request',
 			detail: 'to: must come after from.',
 			status: 400,
-			errors: [{ field: 'to', message: 'must come after from.' }]
+			errors: { to: 'must come after from.' }
 		});
 		const error = toApiError(400, body, 'abc-1');
 		expect(error.message).toBe('to: must come after from.');

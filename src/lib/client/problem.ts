@@ -1,16 +1,10 @@
-import { z } from 'zod';
-
-// Else zod tries whether it may eval, which our content security policy refuses and reports. The server keeps its speed.
-if (typeof document !== 'undefined') z.config({ jitless: true });
-
-/** RFC 9457 problem document, as the API answers; `errors` names the fields that are wrong. */
-const problemSchema = z.object({
-	title: z.string().optional(),
-	detail: z.string().optional(),
-	status: z.number().optional(),
-	errors: z.array(z.object({ field: z.string(), message: z.string() })).optional(),
-	requestId: z.string().optional()
-});
+/** What this side reads of an RFC 9457 problem document; `errors` maps the fields that are wrong to their sentences. */
+interface ProblemDocument {
+	title?: unknown;
+	detail?: unknown;
+	errors?: unknown;
+	requestId?: unknown;
+}
 
 /** An answer of the API that is not what was asked for; `message` is a sentence for the person. */
 export class ApiError extends Error {
@@ -43,23 +37,33 @@ const SENTENCES: Record<number, string> = {
 
 /** Turns a failed answer (its status, body and `X-Request-Id`) into an error with a sentence. */
 export function toApiError(status: number, body: string, requestId: string | null): ApiError {
-	const problem = problemSchema.safeParse(parse(body));
-	const detail = problem.success ? (problem.data.detail ?? problem.data.title) : undefined;
-	const fields = problem.success ? (problem.data.errors ?? []) : [];
+	const problem = parse(body);
 	const sentence =
-		detail ?? SENTENCES[status] ?? `The server answered ${status}. Nothing was lost here; try again.`;
+		textOf(problem.detail) ??
+		textOf(problem.title) ??
+		SENTENCES[status] ??
+		`The server answered ${status}. Nothing was lost here; try again.`;
 	return new ApiError(
 		status,
 		sentence,
-		fields,
-		requestId ?? (problem.success ? (problem.data.requestId ?? null) : null)
+		fieldsOf(problem.errors),
+		requestId ?? textOf(problem.requestId) ?? null
 	);
 }
 
-function parse(body: string): unknown {
+const textOf = (value: unknown) => (typeof value === 'string' && value ? value : undefined);
+
+function fieldsOf(errors: unknown): ApiError['fields'] {
+	if (typeof errors !== 'object' || errors === null) return [];
+	return Object.entries(errors).map(([field, message]) => ({ field, message: String(message) }));
+}
+
+/** A proxy's page, or nothing at all, is a document that says nothing. */
+function parse(body: string): ProblemDocument {
 	try {
-		return JSON.parse(body);
+		const document: unknown = JSON.parse(body);
+		return typeof document === 'object' && document !== null ? document : {};
 	} catch {
-		return null;
+		return {};
 	}
 }
