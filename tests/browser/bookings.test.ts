@@ -279,7 +279,7 @@ describe('a slot', () => {
 		for (const secret of [booking, build.id, build.number, 'Hallbeck', 'camshaft'])
 			expect(html, secret).not.toContain(secret);
 		await rival.goto(`/schedule?view=day&date=${from.toISODate()}`, { waitUntil: 'networkidle' });
-		expect(await rival.getByRole('region', { name: /list/ }).innerText()).toContain('Taken');
+		expect(await rival.getByRole('region', { name: /^The same as a list/ }).innerText()).toContain('Taken');
 		await rival.locator('.calendar .entry-taken').first().waitFor();
 		for (const secret of [booking, build.id, build.number, 'Hallbeck'])
 			expect(await rival.content(), secret).not.toContain(secret);
