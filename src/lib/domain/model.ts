@@ -102,8 +102,7 @@ export type Relation = (typeof RELATIONS)[number];
 export const FLAG_SEVERITIES = ['note', 'review', 'breach'] as const;
 export type FlagSeverity = (typeof FLAG_SEVERITIES)[number];
 
-type RuleSubject =
-	{ channel: string } | { metric: string } | { fuel: string } | { expression: string };
+type RuleSubject = { channel: string } | { metric: string } | { fuel: string } | { expression: string };
 export type RuleLimit = number | [lo: number, hi: number] | { over: string; table: [x: number, y: number][] };
 
 export interface Rule {
