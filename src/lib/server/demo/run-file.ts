@@ -73,6 +73,8 @@ function profileOf({ test }: DemoRun, bench: Bench, told: Omit<RunFile, 'bytes'>
 			const aim = (rpm: number) =>
 				(tableValue(ENERGY_FLOW_TABLE, rpm) * (1 - CONTROL_MARGIN)) / bench.fuel.lhvMjKg;
 			told.truth = sweepTruth(bench, test.plan.fromRpm, test.plan.toRpm, aim);
+			// The richest mixture lies inside an overshoot, which the line that the truth follows does not have.
+			delete told.truth['lambda_flow_min'];
 			told.spans = test.overshoots.map(overLine);
 			return sweepProfile({ ...test.plan, fuelCap: cappedBy(test.overshoots, aim) });
 		}
