@@ -235,7 +235,7 @@ describe('trends', () => {
 		let isCut = true;
 		await engineer.route(/\/api\/v1\/trends\?/, (route) => (isCut ? route.abort() : route.continue()));
 		await engineer.goto(`${stack.current.origin}/trends`);
-		await engineer.getByRole('heading', { name: 'The trend did not load' }).waitFor();
+		await engineer.getByRole('alert').getByText('The trend did not load').waitFor();
 		await expectAccessible(engineer);
 		isCut = false;
 		await engineer.getByRole('button', { name: 'Try again' }).click();

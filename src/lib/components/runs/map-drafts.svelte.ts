@@ -1,14 +1,17 @@
-import type { ProposedColumn } from '$lib/domain/trace';
-import { draftOf, type DraftColumn } from './map-draft';
+import type { DraftColumn } from './map-draft';
 
-/** What was chosen stays while the server tries it, and when it asks again. */
+/**
+ * What was chosen in the map editors stays while the server tries it, and when it asks again. Knows nothing of channels and
+ * units, so that a page without an editor need not load them.
+ */
 export class MapDrafts {
 	readonly #kept: Record<string, DraftColumn[]> = {};
 
-	of(trace: string, proposal: readonly ProposedColumn[]): DraftColumn[] {
+	/** @param make what the editor of this trace starts with */
+	of(trace: string, make: () => DraftColumn[]): DraftColumn[] {
 		const kept = this.#kept[trace];
-		if (kept?.length === proposal.length) return kept;
-		const made = $state(draftOf(proposal));
+		if (kept) return kept;
+		const made = $state(make());
 		this.#kept[trace] = made;
 		return made;
 	}
