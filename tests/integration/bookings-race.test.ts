@@ -137,61 +137,68 @@ describe('simultaneous confirmations', () => {
 });
 
 describe('confirming, moving and cancelling at random', () => {
-	it('from two processes’ pools never overlaps, never ends in a fault, and always has a winner', async () => {
-		const rounds = process.env.TRUNNION_LONG ? 500 : 12;
-		const writers = process.env.TRUNNION_LONG ? 64 : 24;
-		const other = openDeps(readConfig({ ...lab.database.env, LAB_TIME_ZONE: ZONE }));
-		other.now = lab.deps.now;
-		try {
-			const manager = await lab.person('manager');
-			const client = await lab.client('SD');
-			const own = await lab.person('client', client.id);
-			const cells = [await lab.cell({ rigUpMinutes: 15 }), await lab.cell(), await lab.cell()];
-			const builds: string[] = [];
-			for (let i = 0; i < 5; i++) builds.push((await lab.build('SD')).number);
-			const random = seeded(20270301);
-			const pick = <T>(list: readonly T[]) => list[Math.floor(random() * list.length)]!;
-			const statuses = new Map<number, number>();
-			const slots: Booking[] = [];
-			for (let round = 0; round < rounds; round++) {
-				const day = 24 * (round % 20) + 8;
-				const time = () => {
-					const from = day + Math.floor(random() * 24) / 4;
-					return { from: hour(from), to: hour(from + 0.5 + Math.floor(random() * 8) / 4) };
-				};
-				const fresh: Booking[] = [];
-				for (let i = 0; i < writers / 2; i++) {
-					const { from, to } = time();
-					fresh.push(await lab.request(manager, pick(cells).code, pick(builds), from, to));
+	it(
+		'from two processes’ pools never overlaps, never ends in a fault, and always has a winner',
+		async () => {
+			const rounds = process.env.TRUNNION_LONG ? 500 : 12;
+			const writers = process.env.TRUNNION_LONG ? 64 : 24;
+			const other = openDeps(readConfig({ ...lab.database.env, LAB_TIME_ZONE: ZONE }));
+			other.now = lab.deps.now;
+			try {
+				const manager = await lab.person('manager');
+				const client = await lab.client('SD');
+				const own = await lab.person('client', client.id);
+				const cells = [await lab.cell({ rigUpMinutes: 15 }), await lab.cell(), await lab.cell()];
+				const builds: string[] = [];
+				for (let i = 0; i < 5; i++) builds.push((await lab.build('SD')).number);
+				const random = seeded(20270301);
+				const pick = <T>(list: readonly T[]) => list[Math.floor(random() * list.length)]!;
+				const statuses = new Map<number, number>();
+				const slots: Booking[] = [];
+				for (let round = 0; round < rounds; round++) {
+					const day = 24 * (round % 20) + 8;
+					const time = () => {
+						const from = day + Math.floor(random() * 24) / 4;
+						return { from: hour(from), to: hour(from + 0.5 + Math.floor(random() * 8) / 4) };
+					};
+					const fresh: Booking[] = [];
+					for (let i = 0; i < writers / 2; i++) {
+						const { from, to } = time();
+						fresh.push(await lab.request(manager, pick(cells).code, pick(builds), from, to));
+					}
+					const { won, lost } = await race([
+						...fresh.map((booking) => {
+							const deps = pick([lab.deps, other]);
+							return () => confirmBooking(deps, manager, booking.id);
+						}),
+						...Array.from({ length: slots.length ? writers / 2 : 0 }, () => {
+							const [slot, deps, who, move] = [
+								pick(slots),
+								pick([lab.deps, other]),
+								pick([manager, own]),
+								time()
+							];
+							return random() < 0.3
+								? () => cancelBooking(deps, who, slot.id)
+								: () => moveBooking(deps, who, slot.id, { ...move, cell: pick(cells).code });
+						})
+					]);
+					for (const problem of lost) statuses.set(problem.status, (statuses.get(problem.status) ?? 0) + 1);
+					expect(won.length).toBeGreaterThan(0);
+					expect([await overlaps(), await adrift()]).toEqual([0, 0]);
+					slots.push(...won.filter((booking) => booking.state === 'confirmed').slice(0, 6));
 				}
-				const { won, lost } = await race([
-					...fresh.map((booking) => {
-						const deps = pick([lab.deps, other]);
-						return () => confirmBooking(deps, manager, booking.id);
-					}),
-					...Array.from({ length: slots.length ? writers / 2 : 0 }, () => {
-						const [slot, deps, who, move] = [
-							pick(slots),
-							pick([lab.deps, other]),
-							pick([manager, own]),
-							time()
-						];
-						return random() < 0.3
-							? () => cancelBooking(deps, who, slot.id)
-							: () => moveBooking(deps, who, slot.id, { ...move, cell: pick(cells).code });
-					})
-				]);
-				for (const problem of lost) statuses.set(problem.status, (statuses.get(problem.status) ?? 0) + 1);
-				expect(won.length).toBeGreaterThan(0);
-				expect([await overlaps(), await adrift()]).toEqual([0, 0]);
-				slots.push(...won.filter((booking) => booking.state === 'confirmed').slice(0, 6));
+				console.log(
+					`${rounds} rounds of ${writers} writers: refusals by status`,
+					Object.fromEntries(statuses)
+				);
+				expect([...statuses.keys()]).toEqual([409]);
+			} finally {
+				await closeDeps(other);
 			}
-			console.log(`${rounds} rounds of ${writers} writers: refusals by status`, Object.fromEntries(statuses));
-			expect([...statuses.keys()]).toEqual([409]);
-		} finally {
-			await closeDeps(other);
-		}
-	}, LIMIT_OF_ROUNDS_MS);
+		},
+		LIMIT_OF_ROUNDS_MS
+	);
 });
 
 /** Numbers in [0, 1) that are the same in every run (a linear congruential generator). */
