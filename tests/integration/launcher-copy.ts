@@ -3,6 +3,7 @@ import { chmodSync, cpSync, mkdtempSync, readFileSync, readdirSync, rmSync, syml
 import path from 'node:path';
 import { afterAll, afterEach, beforeAll } from 'vitest';
 import { root } from '../../src/local/place.js';
+import type { Mark } from '../../src/local/processes.js';
 
 /** A launcher at work: what it says, and how it ended. */
 export interface Launched {
@@ -19,7 +20,7 @@ interface RunState {
 	ready: boolean;
 	address: string;
 	mailPage: string;
-	processes: Record<string, { pid: number }>;
+	processes: Record<string, Mark>;
 	env: Record<string, string>;
 }
 

@@ -6,7 +6,7 @@ import pg from 'pg';
 import { describe, expect, it, vi } from 'vitest';
 import { DEMO_PASSWORD, DEMO_PEOPLE } from '../../src/lib/server/demo/lab/people';
 import * as demo from '../../src/local/demo.js';
-import { freePort } from '../../src/local/processes.js';
+import { freePort, isAlive } from '../../src/local/processes.js';
 import { processesIn, useCopy } from './launcher-copy';
 
 // Starts are quick, but a machine that is busy with other suites need not be.
@@ -182,12 +182,13 @@ describe('a start', () => {
 		});
 		expect(clients.status).toBe(200);
 
-		const pids = Object.values(state.processes).map(({ pid }) => pid);
-		expect(pids.length).toBe(5);
+		const parts = Object.values(state.processes);
+		expect(parts.length).toBe(5);
+		expect(parts.filter(isAlive)).toEqual(parts);
 		process.kill(state.launcher.pid, 'SIGINT');
 		await run.ended;
 		expect(run.output()).toContain('Stopped.');
-		expect(pids.filter((pid) => existsSync(`/proc/${pid}`))).toEqual([]);
+		expect(parts.filter(isAlive)).toEqual([]);
 		expect(processesIn(copy.folder)).toEqual([]);
 		expect(existsSync(path.join(copy.folder, '.local/run.json'))).toBe(false);
 
@@ -212,11 +213,11 @@ describe('a start', () => {
 		const run = copy.run(start, { PORT: String(await freePort()) });
 		await run.saying('Started in');
 		expect(run.output()).not.toMatch(/Building|Installing/);
-		const pids = Object.values(copy.state().processes).map(({ pid }) => pid);
+		const parts = Object.values(copy.state().processes);
 		run.child.kill('SIGKILL');
 		await run.ended;
-		for (let i = 0; i < 100 && pids.some((pid) => existsSync(`/proc/${pid}`)); i++) await sleep(50);
-		expect(pids.filter((pid) => existsSync(`/proc/${pid}`))).toEqual([]);
+		for (let i = 0; i < 200 && parts.some(isAlive); i++) await sleep(50);
+		expect(parts.filter(isAlive)).toEqual([]);
 		const next = copy.run(servicesOnly);
 		await next.saying('Services run');
 		next.child.kill('SIGTERM');
