@@ -22,7 +22,8 @@ import { LOGINS } from './roles.js';
  * The folder of the private cluster and what must outlive a stop: `cluster.json`, readable by its owner alone.
  *
  * @typedef {{ folder: string, complete: boolean, superuserPassword: string,
- *   passwords: Record<import('./roles.js').Login, string>, seeded: boolean }} Kept `complete`: initdb came to its end
+ *   passwords: Record<import('./roles.js').Login, string>, seeded: boolean, migratedBy: string }} Kept `complete`: initdb came to its
+ *   end; `migratedBy`: the packages' hash at the last migration
  */
 
 const run = promisify(execFile);
@@ -106,7 +107,8 @@ export async function ensureFolder(home, throwAway) {
 		complete: false,
 		superuserPassword: secret(),
 		passwords,
-		seeded: false
+		seeded: false,
+		migratedBy: ''
 	};
 	writeKept(home, made);
 	await initialise(bin, made, throwAway);

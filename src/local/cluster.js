@@ -16,7 +16,7 @@ import { LOGINS, databaseGrants, roleOf, rolesSql } from './roles.js';
  * @typedef {import('./cluster-folder.js').Kept} Kept
  * @typedef {{ running: import('./processes.js').Running, port: number, kept: Kept, isNew: boolean,
  *   psql: (sql: string, database?: string) => Promise<string>, urls: (database: string) => Record<Login | 'superuser', string>,
- *   rememberSeeded: () => void }} Cluster
+ *   remember: (news: Partial<Pick<Kept, 'seeded' | 'migratedBy'>>) => void }} Cluster
  */
 
 const run = promisify(execFile);
@@ -111,7 +111,7 @@ export async function startCluster(home, { name, log, throwAway, onStart }) {
 		isNew,
 		psql,
 		urls,
-		rememberSeeded: () => writeKept(home, { ...kept, seeded: true })
+		remember: (/** @type {Partial<Kept>} */ news) => writeKept(home, Object.assign(kept, news))
 	};
 	await psql(rolesSql(kept.passwords));
 	await ensureDatabase(cluster, 'trunnion');

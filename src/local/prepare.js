@@ -49,11 +49,15 @@ export function runToEnd(command, env = process.env) {
 /** @param {string} name of a package's program */
 export const program = (name) => path.join(root, 'node_modules', '.bin', name);
 
-/** Installs the packages when they are missing or the lockfile is another than the one they were installed by. */
-export async function ensurePackages() {
-	const lockHash = createHash('sha256')
+/** @returns {string} a hash of the lockfile */
+export const packagesHash = () =>
+	createHash('sha256')
 		.update(readFileSync(path.join(root, 'package-lock.json')))
 		.digest('hex');
+
+/** Installs the packages when they are missing or the lockfile is another than the one they were installed by. */
+export async function ensurePackages() {
+	const lockHash = packagesHash();
 	const mark = path.join(localFolder, 'packages.sha256');
 	const installed = path.join(root, 'node_modules', '.package-lock.json');
 	// Packages that someone installed by hand count too, when they are those of the lockfile.

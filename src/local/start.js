@@ -4,8 +4,9 @@ import { DEMO_CLIENTS, DEMO_PASSWORD, DEMO_STAFF, wantsDemo } from './demo.js';
 import { webSettings } from './environment.js';
 import { endLeftovers, forgetRunState, takeLauncherPlace, writeRunState } from './launcher-state.js';
 import { watchForErrors } from './log-watch.js';
+import { migrate } from './migration.js';
 import { Mendable, localFolder, makeFolder, root, textOf } from './place.js';
-import { checkNode, ensureBuild, ensurePackages, runToEnd } from './prepare.js';
+import { checkNode, ensureBuild, ensurePackages } from './prepare.js';
 import {
 	endProcess,
 	isAlive,
@@ -141,7 +142,7 @@ function startSeed(cluster) {
 		own.splice(own.indexOf(seed), 1);
 		if (stopping) return;
 		if (how === 'ended with code 0') {
-			cluster.rememberSeeded();
+			cluster.remember({ seeded: true });
 			console.log('The demo laboratory is complete.');
 		} else
 			console.error(
@@ -153,10 +154,7 @@ function startSeed(cluster) {
 /** @param {import('./cluster.js').Cluster | null} cluster null: someone else's database, which gets no demo */
 async function startApplication(cluster) {
 	const env = { ...state.env, ...web };
-	const migrated = await runToEnd([process.execPath, '--import', 'tsx', 'src/migrate.ts'], env);
-	if (migrated.code !== 0)
-		throw new Mendable(`The database could not be migrated:\n${migrated.output.trim()}`);
-	console.log(migrated.output.trim());
+	await migrate(cluster, env);
 	if (stopping) return;
 	if (cluster && !cluster.kept.seeded && wantsDemo(process.env)) startSeed(cluster);
 	watch(startOwn('worker', ['--import', 'tsx', 'src/worker.ts'], env));

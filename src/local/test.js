@@ -1,6 +1,7 @@
 import path from 'node:path';
 import { parseArgs } from 'node:util';
 import { chromium } from './debian.js';
+import { migrate } from './migration.js';
 import { Mendable, localFolder, makeFolder, textOf } from './place.js';
 import { checkNode, ensureBuild, ensurePackages, program, runToEnd } from './prepare.js';
 import { whenNpmIsGone } from './processes.js';
@@ -69,8 +70,7 @@ async function standUp(folder) {
 		pagePort: 0,
 		onStart: (one) => void services.push(one)
 	});
-	const { code, output } = await runToEnd([process.execPath, '--import', 'tsx', 'src/migrate.ts'], stood.env);
-	if (code !== 0) throw new Mendable(`The test database could not be migrated:\n${output.trim()}`);
+	await migrate(stood.cluster, stood.env);
 	const superuser = stood.cluster?.urls('trunnion').superuser ?? '';
 	return {
 		TRUNNION_TEST_HOME: folder,
