@@ -9,7 +9,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { useBrowser } from '../setup/browser';
 import { useStack } from '../setup/stack';
 import { addMaker, PASSWORD } from './people';
-import { Complaints, openVisitor, signIn } from './visitor';
+import { Complaints, openVisitor, signIn, settled } from './visitor';
 
 /** A slot from the wish to the calendar entry, as people of three houses go through it. */
 const ZONE = 'Europe/Stockholm';
@@ -347,6 +347,7 @@ describe('every page', () => {
 		for (const { width, colorScheme } of looks) {
 			await page.setViewportSize({ width, height: 900 });
 			await page.emulateMedia({ colorScheme });
+			await settled(page);
 			const { violations } = await new AxeBuilder({ page })
 				.withTags(['wcag2a', 'wcag2aa', 'wcag21aa', 'wcag22aa'])
 				.analyze();

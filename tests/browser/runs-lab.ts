@@ -12,6 +12,7 @@ import { createEngine, NewEngine } from '../../src/lib/server/engines';
 import { createFuel, createFuelBatch, NewFuel, NewFuelBatch } from '../../src/lib/server/fuels';
 import type { Stack } from '../setup/stack';
 import { truthOf } from '../traces/traces';
+import { settled } from './visitor';
 
 const PASSWORD = 'a shaft that turns in its bearings';
 const addressOf = (role: Role) => `${role}@fellmoor.example`;
@@ -108,6 +109,7 @@ export async function expectAccessible(page: Page): Promise<void> {
 	] as const) {
 		await page.setViewportSize({ width, height: 900 });
 		await page.emulateMedia({ colorScheme });
+		await settled(page);
 		const { violations } = await new AxeBuilder({ page })
 			.withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'])
 			.analyze();

@@ -50,3 +50,13 @@ export async function signIn(page: Page, email: string): Promise<void> {
 	await page.getByRole('button', { name: 'Sign in' }).click();
 	await page.waitForURL((url) => url.pathname !== '/sign-in');
 }
+
+/** Colours and places ease into a new scheme or width: what is measured before that is neither the old look nor the new. */
+export async function settled(page: Page): Promise<void> {
+	await page.evaluate(async () => {
+		for (let frame = 0; frame < 2; frame++) await new Promise((drawn) => requestAnimationFrame(drawn));
+		const ended = Promise.allSettled(document.getAnimations().map((animation) => animation.finished));
+		// One that never ends, such as a sign of loading, is not waited for.
+		await Promise.race([ended, new Promise((late) => setTimeout(late, 1000))]);
+	});
+}
