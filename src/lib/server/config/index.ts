@@ -16,7 +16,7 @@ const Environment = z.object({
 	S3_SECRET_ACCESS_KEY: z.string(),
 	SMTP_URL: z.string(),
 	MAIL_FROM: z.string().default('Trunnion <logbook@fellmoor.example>'),
-	ORIGIN: z.string().default('http://127.0.0.1:5180'),
+	ORIGIN: z.string().default('http://localhost:5180'),
 	LAB_NAME: z.string().default('Fellmoor Engine Laboratory'),
 	LAB_TIME_ZONE: z.string().default('Etc/UTC'),
 	MAX_TRACE_BYTES: z.coerce
