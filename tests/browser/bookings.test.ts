@@ -1,4 +1,3 @@
-import { AxeBuilder } from '@axe-core/playwright';
 import ICAL from 'ical.js';
 import { DateTime } from 'luxon';
 import { simpleParser, type ParsedMail } from 'mailparser';
@@ -9,7 +8,8 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { useBrowser } from '../setup/browser';
 import { useStack } from '../setup/stack';
 import { addMaker, PASSWORD } from './people';
-import { Complaints, openVisitor, signIn, settled } from './visitor';
+import { expectAccessible } from './accessible';
+import { Complaints, openVisitor, signIn } from './visitor';
 
 /** A slot from the wish to the calendar entry, as people of three houses go through it. */
 const ZONE = 'Europe/Stockholm';
@@ -337,28 +337,6 @@ describe('the schedule', () => {
 });
 
 describe('every page', () => {
-	const looks = [1280, 390].flatMap((width) =>
-		(['light', 'dark'] as const).map((colorScheme) => ({ width, colorScheme }))
-	);
-
-	/** Each fault once, with the first place where it is. */
-	async function faults(page: Page): Promise<string[]> {
-		const found = new Set<string>();
-		for (const { width, colorScheme } of looks) {
-			await page.setViewportSize({ width, height: 900 });
-			await page.emulateMedia({ colorScheme });
-			await settled(page);
-			const { violations } = await new AxeBuilder({ page })
-				.withTags(['wcag2a', 'wcag2aa', 'wcag21aa', 'wcag22aa'])
-				.analyze();
-			for (const { id, nodes } of violations)
-				found.add(`${width} ${colorScheme} ${id}: ${nodes[0]?.html} ${nodes[0]?.failureSummary}`);
-			const wide = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
-			if (wide > 0) found.add(`${width} scrolls ${wide} px sideways`);
-		}
-		return [...found];
-	}
-
 	it.each([
 		'/builds',
 		'/builds/new',
@@ -377,7 +355,7 @@ describe('every page', () => {
 		const at = path.replace('/bookings/[id]', `/bookings/${rivals.number}`).replace('[id]', build.id);
 		const response = await manager.goto(at, { waitUntil: 'networkidle' });
 		expect(response?.status()).toBe(200);
-		expect(await faults(manager)).toEqual([]);
+		await expectAccessible(manager);
 	});
 
 	it('says so accessibly where there is none', async () => {
@@ -386,13 +364,13 @@ describe('every page', () => {
 		const response = await manager.goto(nowhere, { waitUntil: 'networkidle' });
 		expect(response?.status()).toBe(404);
 		expect(await manager.getByRole('heading', { level: 1 }).innerText()).toBe('Nothing here');
-		expect(await faults(manager)).toEqual([]);
+		await expectAccessible(manager);
 	});
 
 	it('to sign in at is accessible', async () => {
 		const page = await open();
 		await page.goto('/sign-in', { waitUntil: 'networkidle' });
-		expect(await faults(page)).toEqual([]);
+		await expectAccessible(page);
 		await page.context().close();
 	});
 

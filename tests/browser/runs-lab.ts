@@ -1,6 +1,4 @@
-import AxeBuilder from '@axe-core/playwright';
 import type { Browser, Page } from 'playwright-core';
-import { expect } from 'vitest';
 import type { Principal, Role } from '../../src/lib/server/access';
 import { addPerson } from '../../src/lib/server/auth';
 import { createBuild } from '../../src/lib/server/builds';
@@ -12,7 +10,6 @@ import { createEngine, NewEngine } from '../../src/lib/server/engines';
 import { createFuel, createFuelBatch, NewFuel, NewFuelBatch } from '../../src/lib/server/fuels';
 import type { Stack } from '../setup/stack';
 import { truthOf } from '../traces/traces';
-import { settled } from './visitor';
 
 const PASSWORD = 'a shaft that turns in its bearings';
 const addressOf = (role: Role) => `${role}@fellmoor.example`;
@@ -99,29 +96,4 @@ export async function signedIn(
 	await page.getByRole('button', { name: 'Sign in' }).click();
 	await page.waitForURL((url) => url.pathname !== '/sign-in');
 	return page;
-}
-
-/** Violations of WCAG 2.2 AA, wide and light, then narrow and dark. */
-export async function expectAccessible(page: Page): Promise<void> {
-	for (const [width, colorScheme] of [
-		[1280, 'light'],
-		[390, 'dark']
-	] as const) {
-		await page.setViewportSize({ width, height: 900 });
-		await page.emulateMedia({ colorScheme });
-		await settled(page);
-		const { violations } = await new AxeBuilder({ page })
-			.withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'])
-			.analyze();
-		expect(
-			violations.map(({ id, nodes }) => [id, ...nodes.map(({ html }) => html.slice(0, 160))]),
-			`axe at ${width} px, ${page.url()}`
-		).toEqual([]);
-		const overflow = await page.evaluate(
-			() => document.documentElement.scrollWidth - document.documentElement.clientWidth
-		);
-		expect(overflow, `wider than ${width} px, ${page.url()}`).toBe(0);
-	}
-	await page.setViewportSize({ width: 1280, height: 900 });
-	await page.emulateMedia({ colorScheme: 'light' });
 }

@@ -3,7 +3,8 @@ import { beforeAll, describe, expect, it } from 'vitest';
 import { useBrowser } from '../setup/browser';
 import { useStack } from '../setup/stack';
 import { bytesOf } from '../traces/traces';
-import { expectAccessible, furnish, signedIn } from './runs-lab';
+import { expectAccessible } from './accessible';
+import { furnish, signedIn } from './runs-lab';
 
 const stack = useStack();
 const browser = useBrowser();
