@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { queryOf, questionOf } from './question';
+import { groupWord, queryOf, questionOf } from './question';
 
 const ask = (text: string, metrics = ['peak_power', 'bte_max']) =>
 	questionOf(new URLSearchParams(text), metrics);
@@ -18,6 +18,10 @@ describe('what an address asks of the trends', () => {
 			fuel: 'F1',
 			to: '2026-03-31'
 		});
+	});
+	it('names a fuel batch as one', () => {
+		const { groupBy } = ask('groupBy=batch');
+		expect(groupWord(groupBy, true)).toBe('Fuel batch');
 	});
 	it('goes to the API without what is not said', () => {
 		expect(queryOf(ask('fuel=F1&cell='))).toBe('metric=bte_max&groupBy=build&fuel=F1');

@@ -1,5 +1,5 @@
 /** What runs can be grouped by. */
-export const GROUPS = ['build', 'engine', 'fuel', 'cell', 'month'] as const;
+export const GROUPS = ['build', 'engine', 'fuel', 'batch', 'cell', 'month'] as const;
 type Group = (typeof GROUPS)[number];
 
 export interface Question {
@@ -17,7 +17,8 @@ export const queryOf = (question: Question): string =>
 	new URLSearchParams(Object.entries(question).filter(([, value]) => value !== '')).toString();
 
 export function groupWord(group: string, isHead = false): string {
-	return isHead ? group.charAt(0).toUpperCase() + group.slice(1) : group;
+	const word = group === 'batch' ? 'fuel batch' : group;
+	return isHead ? word.charAt(0).toUpperCase() + word.slice(1) : word;
 }
 
 const FIRST = 'bte_max';

@@ -7,7 +7,7 @@ import { reading, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { resolve, type RefKind } from '../refs';
 
-const GROUPS = ['build', 'engine', 'fuel', 'cell', 'month'] as const;
+const GROUPS = ['build', 'engine', 'fuel', 'batch', 'cell', 'month'] as const;
 
 export const TrendQuery = z.object({
 	metric: z.string().regex(/^[a-z][a-z0-9_]{1,60}$/, 'name a metric, e.g. bte_max'),
@@ -65,6 +65,7 @@ const GROUP_SQL: Record<
 	build: { id: sql`b.id::text`, label: sql`b.number`, title: sql`b.title` },
 	engine: { id: sql`e.id::text`, label: sql`e.code`, title: sql`e.name` },
 	fuel: { id: sql`f.id::text`, label: sql`f.code`, title: sql`f.name` },
+	batch: { id: sql`q.id::text`, label: sql`q.code`, title: sql`f.name` },
 	cell: { id: sql`cell.id::text`, label: sql`cell.code`, title: sql`cell.name` },
 	month: {
 		id: sql`to_char(r.started_at at time zone 'UTC', 'YYYY-MM')`,
