@@ -6,13 +6,16 @@ import { principalOfSession, principalOfToken } from '$lib/server/auth';
 import { log, readConfig } from '$lib/server/config';
 import { closeDeps, openDeps, type Deps } from '$lib/server/deps';
 import { problemOf } from '$lib/server/db';
+import { closeEvents } from '$lib/server/events';
 import { Problem } from '$lib/server/problem';
-import { SESSION_COOKIE, isOpenRoute, perPrincipal } from '$lib/server/web';
+import { SESSION_COOKIE, isOpenRoute, loopbackDetour, perPrincipal } from '$lib/server/web';
 
 let deps: Deps;
 
 export const init: ServerInit = () => {
 	deps = openDeps(readConfig(process.env));
+	// An open stream is a request that never ends by itself: the adapter would wait for it.
+	for (const signal of ['SIGTERM', 'SIGINT'] as const) process.once(signal, () => void closeEvents(deps));
 	// adapter-node has finished its last request when it says so.
 	process.once('sveltekit:shutdown', () => void closeDeps(deps));
 };
@@ -23,6 +26,8 @@ export const handle: Handle = async ({ event, resolve }) => {
 	const theme = event.cookies.get('theme');
 	event.locals.theme = theme === 'light' || theme === 'dark' ? theme : 'system';
 	event.locals.who = null;
+	const detour = loopbackDetour(deps.config.origin, event.request);
+	if (detour) return secured(event, new Response(null, { status: 307, headers: { location: detour } }));
 	try {
 		event.locals.who = await principalOf(event);
 		const refused = await gate(event);

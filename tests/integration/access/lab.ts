@@ -50,7 +50,7 @@ export async function makeAccessLab(stack: Stack): Promise<AccessLab> {
 			},
 			...(body === undefined ? {} : { body: bytes ? (body as BodyInit) : JSON.stringify(body) })
 		});
-		return { status: response.status, text: await response.text() };
+		return { status: response.status, text: await textOf(response) };
 	};
 	try {
 		const tokens = {} as AccessLab['tokens'];
@@ -169,6 +169,15 @@ export async function makeAccessLab(stack: Stack): Promise<AccessLab> {
 	} finally {
 		await closeDeps(deps);
 	}
+}
+
+/** Of a stream that stays open, what it begins with. */
+async function textOf(response: Response): Promise<string> {
+	if (response.headers.get('content-type') !== 'text/event-stream') return response.text();
+	const reader = response.body!.getReader();
+	const { value } = await reader.read();
+	await reader.cancel();
+	return new TextDecoder().decode(value);
 }
 
 async function settled(call: AccessLab['call'], token: string, run: string): Promise<void> {

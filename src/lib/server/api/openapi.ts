@@ -90,7 +90,7 @@ export function openApiDocument(operations: RouteOperation[], version: string): 
 						? {}
 						: {
 								content: {
-									'application/json': {
+									[operation.mediaType ?? 'application/json']: {
 										schema: z.toJSONSchema(operation.answer, { io: 'output', unrepresentable: 'any' })
 									}
 								}

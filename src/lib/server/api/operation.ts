@@ -42,6 +42,8 @@ export interface OperationDefinition<Q extends z.ZodType, B extends z.ZodType, A
 	/** The body is bytes and not JSON; the use case reads the request itself. */
 	bytes?: boolean;
 	answer: A;
+	/** Of an answer that is not JSON. */
+	mediaType?: string;
 	status?: number;
 	run(call: Call<z.output<Q>, z.output<B>>): Promise<z.input<A> | Response>;
 }

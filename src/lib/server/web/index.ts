@@ -61,3 +61,4 @@ export async function pageData<T>(event: Pick<RequestEvent, 'locals'>, work: () 
 }
 export { refused } from './forms';
 export { labInstant } from './clock';
+export { loopbackDetour } from './loopback';
