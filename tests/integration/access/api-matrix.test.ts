@@ -1,6 +1,7 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { ROLES, type Role } from '../../../src/lib/server/access';
 import { useStack } from '../../setup/stack';
+import { PNG } from '../files';
 import { ABSENT, blind, CANARY, makeAccessLab, type AccessLab, type Things } from './lab';
 
 /**
@@ -80,6 +81,12 @@ const BODIES: Record<string, (things: Things) => unknown> = {
 	flagRun: () => ({ reason: 'matrix' }),
 	addLogLine: () => ({ text: 'matrix' }),
 	mapTrace: () => ({ columns: [{ index: 0, channel: 'time', unit: 's' }] }),
+	addRunAttachment: () => PNG,
+	addBuildAttachment: () => PNG,
+	addFuelBatchAttachment: () => PNG,
+	removeRunAttachment: () => ({ reason: 'matrix' }),
+	removeBuildAttachment: () => ({ reason: 'matrix' }),
+	removeFuelBatchAttachment: () => ({ reason: 'matrix' }),
 	uploadTrace: () => new TextEncoder().encode('time [s],speed [rpm]\n0,1\n')
 };
 
@@ -98,7 +105,8 @@ function idFor(path: string, things: Things): string {
 		'fuel-batches': things.batch,
 		'limit-sets': things.limitSet,
 		bookings: things.booking,
-		runs: things.run
+		runs: things.run,
+		attachments: things.runAttachment
 	};
 	const id = kinds[kind];
 	if (!id) throw new Error(`tests/integration/access: say what {id} is in ${path}`);
@@ -108,8 +116,14 @@ function idFor(path: string, things: Things): string {
 /** Things of the lab's that no client owns: nothing is foreign there. */
 const LAB_OWNED = new Set(['cells', 'closures']);
 
-const fill = (path: string, id: string, trace: string) =>
-	path.replace('{id}', id).replace('{traceId}', trace);
+const fill = (path: string, id: string, part: string) =>
+	path.replace('{id}', id).replace(/\{(trace|attachment)Id\}/, part);
+/** What stands under a thing in a path: one of its attachments, else its trace. */
+function partOf({ path }: Operation, things: Things): string {
+	if (!path.includes('{attachmentId}')) return things.trace;
+	if (path.startsWith('/builds/')) return things.buildAttachment;
+	return path.startsWith('/fuel-batches/') ? things.batchAttachment : things.runAttachment;
+}
 const bodyOf = ({ described }: Operation, things: Things) => {
 	if (!described.requestBody) return undefined;
 	const body = BODIES[described.operationId];
@@ -153,8 +167,8 @@ describe('every operation of the API', () => {
 			for (const role of ROLES.filter((each) => !operation.described['x-roles'].includes(each))) {
 				const answers = [];
 				for (const [id, trace] of [
-					[idOr(operation.path, lab.own), lab.own.trace],
-					[idOr(operation.path, lab.foreign), lab.foreign.trace],
+					[idOr(operation.path, lab.own), partOf(operation, lab.own)],
+					[idOr(operation.path, lab.foreign), partOf(operation, lab.foreign)],
 					[ABSENT, ABSENT]
 				] as const) {
 					const answer = await lab.call(
@@ -183,7 +197,7 @@ describe('every operation of the API', () => {
 				const theirs = await lab.call(
 					lab.own.token,
 					operation.method,
-					path(id, lab.foreign.trace),
+					path(id, partOf(operation, lab.foreign)),
 					bodyOf(operation, lab.own)
 				);
 				const absent = await lab.call(
@@ -200,7 +214,7 @@ describe('every operation of the API', () => {
 					const mixed = await lab.call(
 						lab.own.token,
 						operation.method,
-						path(lab.own.run, lab.foreign.trace),
+						path(lab.own.run, partOf(operation, lab.foreign)),
 						bodyOf(operation, lab.own)
 					);
 					expect(mixed.status, `${label} with a rival’s trace`).toBe(404);
@@ -252,8 +266,8 @@ describe('every operation of the API', () => {
 		for (const operation of reads) {
 			const paths = operation.path.includes('{id}')
 				? [
-						fill(operation.path, idFor(operation.path, lab.own), lab.own.trace),
-						fill(operation.path, `E-${CANARY}`, lab.own.trace)
+						fill(operation.path, idFor(operation.path, lab.own), partOf(operation, lab.own)),
+						fill(operation.path, `E-${CANARY}`, partOf(operation, lab.own))
 					]
 				: [operation.path];
 			for (const path of paths) {
@@ -272,6 +286,9 @@ describe('every operation of the API', () => {
 			'declineBooking',
 			'confirmBooking',
 			'removeClosure',
+			'removeRunAttachment',
+			'removeBuildAttachment',
+			'removeFuelBatchAttachment',
 			'acceptRun',
 			'voidRun'
 		];
@@ -295,7 +312,7 @@ describe('every operation of the API', () => {
 				const answer = await lab.call(
 					token,
 					operation.method,
-					path(idOr(operation.path, lab.own), lab.own.trace),
+					path(idOr(operation.path, lab.own), partOf(operation, lab.own)),
 					bodyOf(operation, lab.own)
 				);
 				// A booking that someone else asked for is theirs or a manager's to move: said as such, since staff see it.

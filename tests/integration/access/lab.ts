@@ -4,6 +4,7 @@ import { addPerson, createTokenFor } from '../../../src/lib/server/auth';
 import { readConfig } from '../../../src/lib/server/config';
 import { closeDeps, openDeps } from '../../../src/lib/server/deps';
 import type { Stack } from '../../setup/stack';
+import { PNG } from '../files';
 
 /** Stands in every text of client B: it must never reach client A. */
 export const CANARY = 'CANARY-7F3A';
@@ -20,6 +21,9 @@ export interface Things {
 	booking: string;
 	run: string;
 	trace: string;
+	runAttachment: string;
+	buildAttachment: string;
+	batchAttachment: string;
 	token: string;
 }
 
@@ -150,6 +154,8 @@ export async function makeAccessLab(stack: Stack): Promise<AccessLab> {
 				`/runs/${run.id}/traces?filename=${text}.csv`,
 				new Uint8Array(sweep)
 			);
+			const attach = async (path: string) =>
+				(await made(manager, `${path}/attachments?filename=${text}.png`, PNG)).id;
 			await settled(call, manager, run.id);
 			return {
 				client: client.id,
@@ -160,6 +166,9 @@ export async function makeAccessLab(stack: Stack): Promise<AccessLab> {
 				booking: booking.id,
 				run: run.id,
 				trace: trace.id,
+				runAttachment: await attach(`/runs/${run.id}`),
+				buildAttachment: await attach(`/builds/${build.id}`),
+				batchAttachment: await attach(`/fuel-batches/${batch.id}`),
 				token: tokens[role]
 			};
 		};

@@ -6,7 +6,9 @@ const WORDS: Readonly<Record<string, string>> = {
 	'run.flag': 'raised a flag',
 	'run.figures': 'computed the figures',
 	'trace.receive': 'uploaded a trace',
-	'trace.map': 'mapped the columns of a trace'
+	'trace.map': 'mapped the columns of a trace',
+	'attachment.add': 'attached a file',
+	'attachment.remove': 'removed an attachment'
 };
 
 /** What was done, to stand after who did it; an action that is not known here is told by its own name. */

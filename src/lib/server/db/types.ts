@@ -27,12 +27,16 @@ export type Timestamp = ColumnType<Date, Date | string, Date | string>;
 export interface Attachment {
   addedBy: string;
   buildId: string | null;
-  clientId: string;
+  clientId: string | null;
   contentType: string;
   createdAt: Generated<Timestamp>;
   filename: string;
+  fuelBatchId: string | null;
   id: Generated<string>;
   objectKey: string;
+  removedAt: Timestamp | null;
+  removedBy: string | null;
+  removedReason: string | null;
   runId: string | null;
   sha256: Buffer;
   sizeBytes: number;

@@ -5,6 +5,7 @@ import type { Principal } from '../access';
 import { fields } from '../api';
 import { reading } from '../db';
 import type { Deps } from '../deps';
+import { asDownload } from '../files';
 import { badRequest, notFound, Problem } from '../problem';
 import { resolve } from '../refs';
 
@@ -116,15 +117,5 @@ export async function downloadOriginal(
 	const id = z.uuid().safeParse(traceId).data;
 	if (!id) throw notFound('This trace');
 	const trace = await findTrace(deps, who, runRef, id);
-	const { Readable } = await import('node:stream');
-	const ascii = trace.filename.replace(/[^\x20-\x7e]|["\\%]/g, '_');
-	return new Response(Readable.toWeb(await deps.store.open(trace.objectKey)) as ReadableStream, {
-		headers: {
-			'content-type': 'application/octet-stream',
-			'content-length': String(trace.sizeBytes),
-			'content-disposition': `attachment; filename="${ascii}"; filename*=UTF-8''${encodeURIComponent(trace.filename)}`,
-			'content-security-policy': "default-src 'none'; sandbox",
-			'cache-control': 'no-store'
-		}
-	});
+	return asDownload(deps, { ...trace, contentType: 'application/octet-stream' });
 }

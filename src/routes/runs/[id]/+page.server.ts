@@ -4,6 +4,7 @@ import { zod4 } from 'sveltekit-superforms/adapters';
 import { z } from 'zod';
 import { FLAG_SEVERITIES } from '$lib/domain/model';
 import { may } from '$lib/server/access';
+import { listAttachments } from '$lib/server/attachments';
 import {
 	acceptRun,
 	addLogLine,
@@ -38,10 +39,11 @@ export const load: PageServerLoad = async ({ locals, params, depends }) => {
 	depends('app:run');
 	return pageData({ locals }, async () => {
 		const run = await getRun(deps, who, params.id);
-		const [curve, log, history] = await Promise.all([
+		const [curve, log, history, attachments] = await Promise.all([
 			readCurve(deps, who, run.id),
 			listLogLines(deps, who, run.id),
-			runHistory(deps, who, run.id)
+			runHistory(deps, who, run.id),
+			listAttachments(deps, who, { kind: 'run', ref: run.id })
 		]);
 		const [acceptForm, voidForm, flagForm, logForm] = await Promise.all([
 			superValidate(zod4(ReviewForm), { id: 'accept', errors: false }),
@@ -54,6 +56,7 @@ export const load: PageServerLoad = async ({ locals, params, depends }) => {
 			curve,
 			log,
 			history,
+			attachments,
 			acceptForm,
 			voidForm,
 			flagForm,

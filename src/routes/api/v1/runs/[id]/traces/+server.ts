@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { operation } from '$lib/server/api';
+import { uploadOf } from '$lib/server/files';
 import { receiveTrace } from '$lib/server/traces';
 
 export const POST = operation({
@@ -10,10 +11,5 @@ export const POST = operation({
 	bytes: true,
 	answer: z.object({ id: z.string(), state: z.literal('received') }),
 	status: 202,
-	run: ({ deps, who, params, query, request, bytes }) =>
-		receiveTrace(deps, who, params.id!, {
-			filename: query.filename ?? null,
-			body: bytes,
-			declaredBytes: Number(request.headers.get('content-length') ?? Number.NaN) || null
-		})
+	run: ({ deps, who, params, ...call }) => receiveTrace(deps, who, params.id!, uploadOf(call))
 });
