@@ -8,14 +8,21 @@ export interface TrendAnswer {
 	groups: {
 		key: string;
 		title: string | null;
+		/** What counts: runs, or sets of repeats. */
 		n: number;
+		runs: number;
+		sets: number;
 		mean: number;
 		sd: number | null;
 		ci95: [lo: number, hi: number] | null;
+		difference: { value: number; df: number; ci95: [lo: number, hi: number] } | null;
 	}[];
+	against: string | null;
 	points: { run: string; group: string; at: string; value: number; u: number | null }[];
 	/** Of all runs that count; `points` holds the newest. */
 	pointsTotal: number;
+	/** Why a filter can match nothing. */
+	notes: string[];
 }
 
 /** Fetches what is asked; keeps the last answer until the next has come. */

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { niceTicks, spreadOf } from './trend-layout';
+import { nearest, niceTicks, shownValues, spreadOf, timeTicks } from './trend-layout';
 
 describe('ticks', () => {
 	it.each([
@@ -32,4 +32,43 @@ it('spreads points inside their column, the first in the middle', () => {
 	expect(places[0]).toBe(0);
 	for (const place of places) expect(Math.abs(place)).toBeLessThanOrEqual(0.5);
 	expect(new Set(places.map((place) => place.toFixed(4))).size).toBe(50);
+});
+
+describe('ticks of time', () => {
+	const ticks = (from: string, to: string, most: number) =>
+		timeTicks(Date.parse(from), Date.parse(to), most, 'Europe/Stockholm');
+	it('are midnights of the lab’s clock', () =>
+		expect(ticks('2026-03-27T12:00:00Z', '2026-03-30T12:00:00Z', 6)).toEqual([
+			{ at: Date.parse('2026-03-27T23:00:00Z'), day: '2026-03-28' },
+			{ at: Date.parse('2026-03-28T23:00:00Z'), day: '2026-03-29' },
+			{ at: Date.parse('2026-03-29T22:00:00Z'), day: '2026-03-30' }
+		]));
+	it('are months over a year, and never more than there is room for', () => {
+		const year = ticks('2025-12-01T12:00:00Z', '2026-12-01T12:00:00Z', 8);
+		expect(year.map(({ day }) => day)).toEqual([
+			'2026-01-01',
+			'2026-03-01',
+			'2026-05-01',
+			'2026-07-01',
+			'2026-09-01',
+			'2026-11-01'
+		]);
+		expect(ticks('1990-01-01T00:00:00Z', '2026-01-01T00:00:00Z', 5).length).toBeLessThanOrEqual(5);
+	});
+});
+
+it('keeps a wide interval of two runs from pressing the runs into a line', () => {
+	const points = [10, 12].map((value) => ({ run: 'r', group: 'a', at: '', value, u: null }));
+	const values = shownValues(points, [{ key: 'a', n: 2, mean: 11, ci95: [-100, 122] }]);
+	expect([Math.min(...values), Math.max(...values)]).toEqual([9, 13]);
+});
+
+it('finds the point under a pointer, the last drawn of two, and none far off', () => {
+	const places = [
+		{ cx: 10, cy: 10 },
+		{ cx: 10, cy: 10 },
+		{ cx: 40, cy: 10 }
+	];
+	expect(nearest(places, 12, 11, 14)).toBe(1);
+	expect(nearest(places, 25, 30, 14)).toBe(-1);
 });

@@ -6,6 +6,8 @@ export interface Column {
 	numeric?: boolean | undefined;
 	/** The name by which the address sorts on this column; none: not sortable. */
 	sort?: string | undefined;
+	/** A first click sorts the largest, or the latest, first; as a rule only numbers do. */
+	largestFirst?: boolean | undefined;
 	/** Takes what room is left, and wraps. */
 	wide?: boolean | undefined;
 	/** The head is for screen readers only (curve marks, actions). */
@@ -20,7 +22,7 @@ export interface Sort {
 /** The sort that a click on a column's head asks for: numbers and dates start with the largest. */
 export function nextSort(column: Column, now: Sort | undefined): Sort | null {
 	if (!column.sort) return null;
-	const first = isNumeric(column) ? 'down' : 'up';
+	const first = (column.largestFirst ?? isNumeric(column)) ? 'down' : 'up';
 	if (now?.by !== column.sort) return { by: column.sort, direction: first };
 	return { by: column.sort, direction: now.direction === 'up' ? 'down' : 'up' };
 }

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { dayText, minutesText, momentText, slotText, zoneText } from './clock';
+import { dayText, labMidnightMs, minutesText, momentText, plainDayText, slotText, zoneText } from './clock';
 
 const BERLIN = 'Europe/Berlin';
 
@@ -8,6 +8,16 @@ describe('the lab’s clock', () => {
 		expect(dayText('2026-12-08T23:30:00Z', BERLIN)).toBe('Wed 9 Dec 2026');
 		expect(dayText('2026-12-08T23:30:00Z', 'Etc/UTC')).toBe('Tue 8 Dec 2026');
 	});
+	it('says a plain day of an address, and leaves alone what is none', () =>
+		expect(['2026-12-08', '2026-13-01', 'spring'].map(plainDayText)).toEqual([
+			'8 Dec 2026',
+			'2026-13-01',
+			'spring'
+		]));
+	it('begins a day at the lab’s midnight', () =>
+		expect(new Date(labMidnightMs(Date.UTC(2026, 6, 1), BERLIN)).toISOString()).toBe(
+			'2026-06-30T22:00:00.000Z'
+		));
 	it('follows summer time', () => {
 		expect(momentText('2026-07-01T07:05:00Z', BERLIN)).toBe('Wed 1 Jul 2026, 09:05');
 		expect(momentText(new Date('2026-12-01T07:05:00Z'), BERLIN)).toBe('Tue 1 Dec 2026, 08:05');

@@ -44,6 +44,10 @@ function whichOfTwo(ms: number, zone: string): string {
 	return ` UTC${own < 0 ? '−' : '+'}${two(Math.floor(minutes / 60))}:${two(minutes % 60)}`;
 }
 
+/** When the day that begins at this UTC midnight begins on the lab's clock, in ms. */
+export const labMidnightMs = (utcMidnightMs: number, zone: string): number =>
+	utcMidnightMs - offsetMs(utcMidnightMs, zone);
+
 const two = (part: number) => String(part).padStart(2, '0');
 const msOf = (at: Date | string) => (typeof at === 'string' ? Date.parse(at) : at.getTime());
 
@@ -56,6 +60,13 @@ function clockOf(ms: number, zone: string): string {
 export function dayText(at: Date | string, zone: string): string {
 	const wall = new Date(wallMs(msOf(at), zone));
 	return `${DAYS[wall.getUTCDay()]} ${wall.getUTCDate()} ${MONTHS[wall.getUTCMonth()]} ${wall.getUTCFullYear()}`;
+}
+
+/** A plain day of an address, `2026-12-08`, as `8 Dec 2026`; what is none stays as it is. */
+export function plainDayText(day: string): string {
+	const [, year, month, date] = /^(\d{4})-(\d\d)-(\d\d)$/.exec(day) ?? [];
+	const name = MONTHS[Number(month) - 1];
+	return name ? `${Number(date)} ${name} ${year}` : day;
 }
 
 /** `Tue 8 Dec 2026, 09:00`. @param zone IANA name */

@@ -67,6 +67,71 @@ const METRICS: Readonly<Record<string, Label>> = {
 	sample_rate: of('Sample rate', 'Hz', 1)
 };
 
+/** Where a chooser lists a figure. The groups and what stands in them, in order; a code that is in none is a channel's. */
+const METRIC_GROUPS: Readonly<Record<string, readonly string[]>> = {
+	'Power and torque': [
+		'peak_power',
+		'peak_power_speed',
+		'peak_torque',
+		'peak_torque_speed',
+		'peak_power_corrected',
+		'peak_torque_corrected',
+		'correction_factor',
+		'bmep_max'
+	],
+	'Efficiency and fuel': [
+		'bsfc_min',
+		'bsfc_at_peak_power',
+		'bte_max',
+		'bte_at_peak_power',
+		'bte_max_speed',
+		'bte_max_bmep',
+		'fuel_flow_max',
+		'fuel_energy_flow_max'
+	],
+	'Air and mixture': [
+		'air_flow_max',
+		'lambda_flow_min',
+		'lambda_flow_max',
+		'lambda_flow_at_peak_power',
+		'lambda_sensor_at_peak_power',
+		'lambda_exhaust_at_peak_power',
+		've_inlet_max',
+		've_manifold_max'
+	],
+	'Pressures and temperatures': [
+		'manifold_pressure_max',
+		'manifold_temp_max',
+		'inlet_over_ambient_min',
+		'exhaust_temp_max',
+		'coolant_temp_max',
+		'oil_temp_max',
+		'oil_pressure_min'
+	],
+	'Whole run': [
+		'fuel_used_mass',
+		'fuel_used_energy',
+		'work_done',
+		'bte_cycle',
+		'bsfc_cycle',
+		'duration',
+		'engine_hours',
+		'rows',
+		'sample_rate'
+	],
+	Electrical: [
+		'electrical_energy_out',
+		'electrical_energy_in',
+		'electrical_power_max',
+		'electrical_store_swing',
+		'combined_power_max'
+	]
+};
+
+/** The chooser's group of a metric: `Efficiency and fuel`. */
+export const metricGroup = (code: string): string =>
+	Object.entries(METRIC_GROUPS).find(([, codes]) => codes.includes(code))?.[0] ?? 'Channels';
+
 /** Every metric code in the order in which figures are listed. */
 export const METRIC_CODES: readonly string[] = Object.keys(METRICS);
 

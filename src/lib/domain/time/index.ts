@@ -23,3 +23,8 @@ export function instantsAt(local: string, zone: string): Date[] {
 		.map((instant) => instant.toJSDate())
 		.sort((a, b) => a.getTime() - b.getTime());
 }
+
+/** So many days later at the same reading of the wall clock. @param zone IANA name */
+export function plusDays(at: Date, days: number, zone: string): Date {
+	return DateTime.fromJSDate(at, { zone }).plus({ days }).toJSDate();
+}

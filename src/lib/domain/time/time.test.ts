@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { instantsAt, wallClock } from './index';
+import { instantsAt, wallClock, plusDays } from './index';
 
 describe('instantsAt', () => {
 	// Changes of 29 March and 25 October 2026 in Central Europe: IANA time zone database.
@@ -24,4 +24,11 @@ describe('instantsAt', () => {
 		expect(instant!.toISOString()).toBe('2026-06-01T14:00:00.000Z');
 		expect(wallClock(instant!, 'America/New_York')).toBe('2026-06-01T10:00');
 	});
+});
+
+it('counts days by the wall clock, over a clock change too', () => {
+	// Stockholm goes forward on 28 March 2027: that day has 23 hours.
+	expect(plusDays(new Date('2027-03-27T23:00:00Z'), 1, 'Europe/Stockholm').toISOString()).toBe(
+		'2027-03-28T22:00:00.000Z'
+	);
 });

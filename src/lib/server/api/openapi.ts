@@ -92,7 +92,8 @@ export function openApiDocument(operations: RouteOperation[], version: string): 
 								content: {
 									[operation.mediaType ?? 'application/json']: {
 										schema: z.toJSONSchema(operation.answer, { io: 'output', unrepresentable: 'any' })
-									}
+									},
+									...(operation.csv ? { 'text/csv': { schema: { type: 'string' } } } : {})
 								}
 							})
 				},

@@ -44,6 +44,8 @@ export interface OperationDefinition<Q extends z.ZodType, B extends z.ZodType, A
 	answer: A;
 	/** Of an answer that is not JSON. */
 	mediaType?: string;
+	/** Answers a table of text as well; the use case makes that response. */
+	csv?: boolean;
 	status?: number;
 	run(call: Call<z.output<Q>, z.output<B>>): Promise<z.input<A> | Response>;
 }

@@ -1,3 +1,6 @@
+export { runChoices } from './choices';
+export { runsCsv } from './csv';
+export { RUN_TABLES, runConditions, RunFilter } from './filter';
 export { listRuns } from './list';
 export { openRun } from './open';
 export {

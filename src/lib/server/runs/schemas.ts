@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { CORRECTIONS, FLAG_SEVERITIES, RUN_KINDS } from '$lib/domain/model';
 import { fields } from '../api';
+import { RunFilter } from './filter';
 
 /** Wide physical bounds: they catch a wrong unit (1013 hPa for 101.3 kPa), not a hard winter. */
 const Ambient = z.object({
@@ -81,6 +82,8 @@ const FlagView = z.object({
 	raisedBy: z.string().nullable()
 });
 
+const RUN_STATES = ['open', 'closed', 'accepted', 'voided'] as const;
+
 const Head = {
 	id: z.string(),
 	number: z.string(),
@@ -92,7 +95,7 @@ const Head = {
 	cellColour: z.number(),
 	fuelBatch: z.string(),
 	kind: z.enum(RUN_KINDS),
-	state: z.enum(['open', 'closed', 'accepted', 'voided']),
+	state: z.enum(RUN_STATES),
 	startedAt: fields.instantOut,
 	loggedBy: z.string()
 };
@@ -133,13 +136,32 @@ export const RunListItem = z.object({
 });
 export type RunRow = z.input<typeof RunListItem>;
 
-export const RunQuery = z.object({
-	client: fields.ref.optional(),
-	build: fields.ref.optional(),
-	cell: fields.ref.optional(),
-	state: z.enum(['open', 'closed', 'accepted', 'voided']).optional(),
-	flagged: z.stringbool().optional()
+const metricCode = /^[a-z][a-z0-9_]{1,60}$/;
+const MOST_LISTED_METRICS = 12;
+/** Metric codes in one word of an address, `peak_power,bte_max`. */
+const metricCodes = z
+	.string()
+	.max(800)
+	.transform((text) => [...new Set(text.split(',').filter(Boolean))])
+	.refine(
+		(codes) => codes.length <= MOST_LISTED_METRICS && codes.every((code) => metricCode.test(code)),
+		`name at most ${MOST_LISTED_METRICS} metrics, e.g. peak_power,bte_max`
+	);
+
+export const RunQuery = RunFilter.extend({
+	state: z.enum(RUN_STATES, { error: `is one of ${RUN_STATES.join(', ')}` }).optional(),
+	flagged: z.stringbool({ error: 'is true or false' }).optional(),
+	/** Part of a run’s number, or of its build’s number or title. */
+	text: z.string().trim().max(100, 'at most 100 characters').optional(),
+	/** `started`, `number` or a metric’s code; a minus before it: largest first. */
+	sort: z
+		.string()
+		.regex(/^-?[a-z][a-z0-9_]{1,60}$/, 'sort by started, number or a metric, e.g. -peak_power')
+		.default('-started'),
+	/** Which figures each row has. */
+	metrics: metricCodes.optional()
 });
+export type RunQueryInput = z.output<typeof RunQuery>;
 
 export const Reason = z.object({ reason: fields.reason.min(1, 'say why') });
 export const OptionalReason = z.object({ reason: fields.reason.optional() });

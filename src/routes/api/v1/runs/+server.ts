@@ -1,13 +1,18 @@
+import { z } from 'zod';
 import { operation, pageOf, PageQuery } from '$lib/server/api';
-import { listRuns, NewRun, openRun, RunListItem, RunQuery, RunView } from '$lib/server/runs';
+import { wantsCsv } from '$lib/server/csv';
+import { listRuns, NewRun, openRun, RunListItem, RunQuery, runsCsv, RunView } from '$lib/server/runs';
 
 export const GET = operation({
 	id: 'listRuns',
 	summary: 'Runs you may see, newest first',
 	action: 'run.read',
-	query: PageQuery.extend(RunQuery.shape),
-	answer: pageOf(RunListItem),
-	run: ({ deps, who, query }) => listRuns(deps, who, query)
+	// A CSV holds all runs of the list: `limit` and `cursor` are of the pages in JSON.
+	query: PageQuery.extend(RunQuery.shape).extend({ format: z.enum(['json', 'csv']).optional() }),
+	csv: true,
+	answer: pageOf(RunListItem).extend({ notes: z.array(z.string()) }),
+	run: ({ deps, who, query: { format, ...query }, request }) =>
+		wantsCsv(request, format) ? runsCsv(deps, who, query) : listRuns(deps, who, query)
 });
 
 export const POST = operation({
