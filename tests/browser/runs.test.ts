@@ -208,39 +208,3 @@ describe('a run from its record to its acceptance', () => {
 		await plain.context().close();
 	});
 });
-
-describe('trends', () => {
-	it('show the build with n and its mean, and keep the question in the address', async () => {
-		const engineer = await signedIn(browser.current, stack.current.origin, 'engineer');
-		await engineer.goto(`${stack.current.origin}/trends?metric=peak_power`);
-		const table = engineer.getByRole('region', { name: 'Peak power by build' });
-		const row = table.getByRole('row').filter({ hasText: 'P20.1' });
-		// The void run does not count.
-		expect((await row.innerText()).replace(/\s+/g, ' ')).toMatch(/^P20\.1 1 126\.9\d one run has none/);
-		await engineer.getByText('Runs of one afternoon are not independent.').waitFor();
-		await engineer.getByRole('link', { name: /^PLN-R-0001, 126\.9\d kW, P20\.1/ }).waitFor();
-		await expectAccessible(engineer);
-		await engineer.getByLabel('Grouped by').selectOption('cell');
-		await engineer.waitForURL(/groupBy=cell/);
-		await engineer.getByRole('region', { name: 'Peak power by cell' }).getByText('C1').waitFor();
-		await engineer.getByLabel('To', { exact: true }).fill('2020-01-01');
-		await engineer.getByLabel('To', { exact: true }).press('Enter');
-		await engineer.getByRole('heading', { name: 'No run has this figure' }).waitFor();
-		await engineer.getByRole('link', { name: 'Clear filter' }).first().click();
-		await engineer.getByRole('region', { name: 'Peak power by cell' }).waitFor();
-		await engineer.context().close();
-	});
-
-	it('say what failed, and try again', async () => {
-		const engineer = await signedIn(browser.current, stack.current.origin, 'engineer');
-		let isCut = true;
-		await engineer.route(/\/api\/v1\/trends\?/, (route) => (isCut ? route.abort() : route.continue()));
-		await engineer.goto(`${stack.current.origin}/trends`);
-		await engineer.getByRole('alert').getByText('The trend did not load').waitFor();
-		await expectAccessible(engineer);
-		isCut = false;
-		await engineer.getByRole('button', { name: 'Try again' }).click();
-		await engineer.getByText('Each dot is a run.').waitFor();
-		await engineer.context().close();
-	});
-});

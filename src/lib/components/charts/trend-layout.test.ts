@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { nearest, niceTicks, shownValues, spreadOf, timeTicks } from './trend-layout';
+import { nearest, niceTicks, placePoints, shownValues, spreadOf, timeTicks } from './trend-layout';
 
 describe('ticks', () => {
 	it.each([
@@ -71,4 +71,18 @@ it('finds the point under a pointer, the last drawn of two, and none far off', (
 	];
 	expect(nearest(places, 12, 11, 14)).toBe(1);
 	expect(nearest(places, 25, 30, 14)).toBe(-1);
+});
+
+it('goes through runs over time, or group by group', () => {
+	const groups = ['a', 'b'].map((key) => ({ key, n: 2, mean: 0, ci95: null }));
+	const points = ['b', 'a', 'b'].map((group, n) => ({
+		run: `r${n}`,
+		group,
+		at: `2026-01-0${n + 1}`,
+		value: 0,
+		u: null
+	}));
+	const order = (isTime: boolean) => placePoints(points, groups, isTime).map(({ run }) => run);
+	expect(order(true)).toEqual(['r0', 'r1', 'r2']);
+	expect(order(false)).toEqual(['r1', 'r0', 'r2']);
 });

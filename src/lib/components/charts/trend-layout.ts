@@ -54,6 +54,27 @@ export function niceTicks(values: readonly number[], wanted: number): Ticks {
 export const spreadOf = (n: number): number => (n === 0 ? 0 : ((n * 0.618033988749895 + 0.5) % 1) - 0.5);
 
 /**
+ * Each run with the place of its group and how far aside of the group's middle it stands (−0.5 … 0.5), in the order in
+ * which the arrow keys go: over time, or group by group and the oldest first.
+ * @param points oldest first
+ */
+export function placePoints(
+	points: readonly TrendPoint[],
+	groups: readonly TrendGroup[],
+	isTime: boolean
+): (TrendPoint & { place: number; aside: number })[] {
+	const order = new Map(groups.map(({ key }, at) => [key, at]));
+	const counts = groups.map(() => 0);
+	const placed = points.map((point) => {
+		const place = order.get(point.group) ?? 0;
+		const n = counts[place] ?? 0;
+		counts[place] = n + 1;
+		return { ...point, place, aside: spreadOf(n) };
+	});
+	return isTime ? placed : placed.sort((a, b) => a.place - b.place);
+}
+
+/**
  * What the axis has to hold: all runs, and intervals as far as twice the runs' own range. An interval of two runs can be
  * many times wider; to hold it whole would press the runs into a line.
  */

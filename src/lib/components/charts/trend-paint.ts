@@ -6,7 +6,7 @@ export const TOLD_APART = 6;
 
 interface Dot extends Place {
 	/** Place of its group among the groups. */
-	group: number;
+	place: number;
 }
 
 interface Painting {
@@ -64,8 +64,8 @@ export function paintDots(canvas: HTMLCanvasElement, dots: readonly Dot[], paint
 	// A path for each look, not for each dot.
 	for (let look = 0; look < (isTold ? TOLD_APART : 1); look++) {
 		brush.beginPath();
-		for (const { cx, cy, group } of dots) {
-			if ((isTold && group % TOLD_APART !== look) || cx < left - 8 || cx > left + width + 8) continue;
+		for (const { cx, cy, place } of dots) {
+			if ((isTold && place % TOLD_APART !== look) || cx < left - 8 || cx > left + width + 8) continue;
 			trace(brush, isTold ? look : 0, cx, cy, r);
 		}
 		brush.strokeStyle = isTold ? seriesStyle(look, scheme).colour : colour('ink', scheme);
