@@ -102,17 +102,18 @@ export async function listRuns(
 		if (query.cell)
 			all = all.where('r.cellId', '=', (await resolve(trx, 'cell', query.cell, { field: 'cell' })).id);
 		if (query.state) all = all.where('r.state', '=', query.state);
-		if (query.flagged)
-			all = all.where((eb) =>
-				eb.exists(
+		if (query.flagged !== undefined)
+			all = all.where((eb) => {
+				const isFlagged = eb.exists(
 					eb
 						.selectFrom('flag as g')
 						.leftJoin('reduction as d', 'd.id', 'g.reductionId')
 						.whereRef('g.runId', '=', 'r.id')
 						.where((or) => or.or([or('g.reductionId', 'is', null), or('d.supersededAt', 'is', null)]))
 						.select('g.id')
-				)
-			);
+				);
+				return query.flagged ? isFlagged : eb.not(isFlagged);
+			});
 		if (query.cursor) {
 			const [at, id] = readCursor(query.cursor);
 			all = all.where(

@@ -1,0 +1,2 @@
+export { readToday } from './read';
+export { TodayView, type Today, type Work } from './schemas';
