@@ -1,0 +1,2 @@
+export { BenchNeeds, makeBench, NewBench } from './bench';
+export { readRunStart, type RunStart } from './read';
