@@ -27,7 +27,7 @@ export interface LaneCell {
 }
 
 /** Places along the lane are parts of its width, `12.5%`, so that it needs no measuring and no style. */
-export interface Bar {
+interface Bar {
 	key: string;
 	kind: 'confirmed' | 'done' | 'requested' | 'rig' | 'taken' | 'closed' | 'shut' | 'run';
 	x: string;

@@ -9,7 +9,7 @@ const TRACE_DUE_MINUTES = 60;
 const RUNNING_AT_MOST_MINUTES = 24 * 60;
 
 /** A confirmed slot of a cell, as far as its punctuality goes. */
-export interface Slot extends Interval {
+interface Slot extends Interval {
 	rigUpMinutes: number;
 	rigDownMinutes: number;
 }
@@ -24,7 +24,7 @@ export interface Recorded {
 }
 
 /** Someone's time after this one, rigging included; whose it is does not matter here. */
-export interface Following {
+interface Following {
 	occupiedFrom: Date;
 }
 

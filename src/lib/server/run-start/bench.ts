@@ -30,7 +30,7 @@ export const NewBench = z.object({
 });
 
 /** What is lacking before a first record can be opened, and whether this person may add it. */
-export interface BenchNeeds {
+interface BenchNeeds {
 	client: boolean;
 	fuel: boolean;
 	cell: boolean;
@@ -38,30 +38,27 @@ export interface BenchNeeds {
 	isAllowed: boolean;
 }
 
-export const BenchNeeds = {
-	/** @param lists how many of each there are */
-	of(who: Principal, lists: { clients: number; batches: number; cells: number }): BenchNeeds {
-		const needs = {
-			client: lists.clients === 0,
-			fuel: lists.batches === 0,
-			cell: lists.cells === 0
-		};
-		return {
-			...needs,
-			isAllowed:
-				may(who, 'engine.write') &&
-				may(who, 'build.write') &&
-				(!needs.client || may(who, 'client.create')) &&
-				(!needs.fuel || may(who, 'fuel.write')) &&
-				(!needs.cell || may(who, 'cell.write'))
-		};
-	}
-};
+/** @param lists how many of each there are */
+export function benchNeeds(
+	who: Principal,
+	lists: { clients: number; batches: number; cells: number }
+): BenchNeeds {
+	const needs = { client: lists.clients === 0, fuel: lists.batches === 0, cell: lists.cells === 0 };
+	return {
+		...needs,
+		isAllowed:
+			may(who, 'engine.write') &&
+			may(who, 'build.write') &&
+			(!needs.client || may(who, 'client.create')) &&
+			(!needs.fuel || may(who, 'fuel.write')) &&
+			(!needs.cell || may(who, 'cell.write'))
+	};
+}
 
 const LONGEST_CODE = 20;
 
 /** A code that is made of a name, and of none of those that are taken. */
-export function codeOf(name: string, taken: readonly string[], fallback: string): string {
+function codeOf(name: string, taken: readonly string[], fallback: string): string {
 	const plain = name
 		.normalize('NFKD')
 		.toUpperCase()
@@ -103,7 +100,7 @@ export async function makeBench(deps: Deps, who: Principal, input: z.output<type
 		listFuelBatches(deps, who, { limit: 200 }),
 		listCells(deps, who)
 	]);
-	const needs = BenchNeeds.of(who, {
+	const needs = benchNeeds(who, {
 		clients: clients.length,
 		batches: batches.items.length,
 		cells: cells.length

@@ -1,2 +1,2 @@
-export { BenchNeeds, makeBench, NewBench } from './bench';
-export { readRunStart, type RunStart } from './read';
+export { benchNeeds, makeBench, NewBench } from './bench';
+export { readRunStart } from './read';

@@ -5,7 +5,7 @@ import { resolve } from '../refs';
 import { RUN_KINDS, type RunKind } from '$lib/domain/model';
 
 /** What a new record starts from, and where that was taken from; null for what nobody can tell yet. */
-export interface RunStart {
+interface RunStart {
 	build: string | null;
 	cell: string | null;
 	fuelBatch: string | null;

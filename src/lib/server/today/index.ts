@@ -1,2 +1,2 @@
 export { readToday } from './read';
-export { TodayView, type Today, type Work } from './schemas';
+export { TodayView, type Today } from './schemas';

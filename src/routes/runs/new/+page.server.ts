@@ -9,7 +9,7 @@ import { listCells } from '$lib/server/cells';
 import { listClients } from '$lib/server/clients';
 import { listFuelBatches } from '$lib/server/fuels';
 import { listLimitSets } from '$lib/server/limits';
-import { BenchNeeds, makeBench, readRunStart } from '$lib/server/run-start';
+import { benchNeeds, makeBench, readRunStart } from '$lib/server/run-start';
 import { NewRun, openRun } from '$lib/server/runs';
 import { labInstant, pageData, personMay, refused } from '$lib/server/web';
 import type { Actions, PageServerLoad } from './$types';
@@ -76,7 +76,7 @@ export const load: PageServerLoad = async ({ locals, url }) => {
 			}),
 			given: { build: given.build, cell: given.cell, fuelBatch: given.fuelBatch },
 			start,
-			needs: BenchNeeds.of(who, {
+			needs: benchNeeds(who, {
 				clients: clients.length,
 				batches: batches.items.length,
 				cells: cells.length
