@@ -60,8 +60,9 @@ const TOLD: Record<string, { read: Action | null; id?: keyof Things; actions?: R
 		id: 'run',
 		actions: { close: 'run.open', accept: 'run.review', void: 'run.review', flag: 'run.flag', log: 'run.log' }
 	},
-	'/runs/new': { read: 'run.open', actions: { default: 'run.open' } },
+	'/runs/new': { read: 'run.open', actions: { open: 'run.open', prepare: 'engine.write' } },
 	'/schedule': { read: 'schedule.read' },
+	'/today': { read: 'schedule.read' },
 	'/trends': { read: 'trend.read' }
 };
 
