@@ -1,4 +1,5 @@
 export { absorberRemarks, type Remark } from './absorber';
+export { droppedSpan, wallSpan } from './drop';
 export { firstFit } from './first-fit';
 export { instantOrDayFromIso } from './instants';
 export {
