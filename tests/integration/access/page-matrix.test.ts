@@ -40,7 +40,10 @@ const TOLD: Record<string, { read: Action | null; id?: keyof Things; actions?: R
 			move: 'booking.move'
 		}
 	},
-	'/bookings/new': { read: 'booking.request', actions: { default: 'booking.request' } },
+	'/bookings/new': {
+		read: 'booking.request',
+		actions: { fit: 'booking.request', request: 'booking.request' }
+	},
 	'/builds': { read: 'engine.read' },
 	'/builds/[id]': {
 		read: 'engine.read',
@@ -61,8 +64,9 @@ const TOLD: Record<string, { read: Action | null; id?: keyof Things; actions?: R
 		actions: { close: 'run.open', accept: 'run.review', void: 'run.review', flag: 'run.flag', log: 'run.log' }
 	},
 	'/runs/new': { read: 'run.open', actions: { open: 'run.open', prepare: 'engine.write' } },
-	'/schedule': { read: 'schedule.read' },
 	'/today': { read: 'schedule.read' },
+	'/schedule': { read: 'schedule.read', actions: { move: 'booking.move' } },
+	'/schedule/close': { read: 'closure.write', actions: { default: 'closure.write' } },
 	'/trends': { read: 'trend.read' }
 };
 
