@@ -6,6 +6,8 @@ interface Call {
 	body?: unknown;
 	/** Address parameters; empty ones are left out. */
 	query?: Record<string, string | number | null | undefined>;
+	/** The version that the change was made on: refused when there is a newer one. */
+	ifMatch?: number;
 	signal?: AbortSignal;
 	/** Kit's `fetch` inside a load; the browser's elsewhere. */
 	fetch?: typeof fetch;
@@ -14,9 +16,11 @@ interface Call {
 
 /** Calls `/api/v1` and gives the answer, or throws an `ApiError` with a sentence; an abort throws the signal's reason. */
 export async function callApi(path: string, call: Call = {}): Promise<Response> {
-	const { method = 'GET', body, query = {}, signal, fetch: ask = fetch, accept = 'application/json' } = call;
+	const { method = 'GET', body, query = {}, ifMatch, signal, fetch: ask = fetch } = call;
+	const { accept = 'application/json' } = call;
 	const headers: Record<string, string> = { accept };
 	if (body !== undefined) headers['content-type'] = 'application/json';
+	if (ifMatch !== undefined) headers['if-match'] = `"${ifMatch}"`;
 	const response = await ask(`/api/v1${path}${queryText(query)}`, {
 		method,
 		headers,

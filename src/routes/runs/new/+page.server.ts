@@ -4,11 +4,12 @@ import { zod4 } from 'sveltekit-superforms/adapters';
 import { z } from 'zod';
 import { CORRECTIONS, RUN_KINDS } from '$lib/domain/model';
 import { wallClock } from '$lib/domain/time';
+import { getBooking } from '$lib/server/bookings';
 import { listBuilds } from '$lib/server/builds';
 import { listCells } from '$lib/server/cells';
 import { listFuelBatches } from '$lib/server/fuels';
 import { listLimitSets } from '$lib/server/limits';
-import { NewRun, openRun } from '$lib/server/runs';
+import { NewRun, openRun, proposeLimitSet } from '$lib/server/runs';
 import { labInstant, pageData, personMay, refused } from '$lib/server/web';
 import type { Actions, PageServerLoad } from './$types';
 
@@ -22,6 +23,8 @@ const optionalNumber = (low: number, high: number, unit: string) =>
 
 /** Flat, as a form is; text for what may be left empty. */
 const RunForm = z.object({
+	/** Number of the booking that it is opened from; empty: alone. */
+	booking: z.string().default(''),
 	build: z.string().min(1, 'Choose the build that runs.'),
 	cell: z.string().min(1, 'Choose the cell.'),
 	fuelBatch: z.string().min(1, 'Choose the fuel batch.'),
@@ -46,9 +49,19 @@ export const load: PageServerLoad = async ({ locals, url }) => {
 			listFuelBatches(deps, who, { limit: 200 }),
 			listLimitSets(deps, who)
 		]);
+		const from = url.searchParams.get('booking');
+		const booking = from ? await getBooking(deps, who, from) : null;
+		const build = booking?.buildId ?? url.searchParams.get('build') ?? '';
 		const start = {
-			build: url.searchParams.get('build') ?? '',
-			cell: url.searchParams.get('cell') ?? '',
+			booking: booking?.number ?? '',
+			build,
+			cell: booking?.cell ?? url.searchParams.get('cell') ?? '',
+			fuelBatch:
+				batches.items.find(
+					({ code, client }) => code === booking?.fuelBatch && (client === null || client === booking.client)
+				)?.id ?? '',
+			...(booking?.kind ? { kind: booking.kind } : {}),
+			limitSet: build ? ((await proposeLimitSet(deps, who, build)) ?? '') : '',
 			startedAt: wallClock(deps.now(), deps.config.labTimeZone)
 		};
 		return {
@@ -78,7 +91,7 @@ export const actions: Actions = {
 		const who = personMay(locals, 'run.open');
 		const form = await superValidate(request, zod4(RunForm));
 		if (!form.valid) return fail(400, { form });
-		const { startedAt, limitSet, net, barometerKpa, temperatureC, humidityPct, ...rest } = form.data;
+		const { startedAt, booking, limitSet, net, barometerKpa, temperatureC, humidityPct, ...rest } = form.data;
 		let number: string;
 		try {
 			const run = await openRun(
@@ -87,6 +100,7 @@ export const actions: Actions = {
 				NewRun.parse({
 					...rest,
 					startedAt: labInstant(locals.deps.config, startedAt, 'startedAt').toISOString(),
+					booking: booking || null,
 					limitSet: limitSet || null,
 					net: net === '' ? null : net === 'net',
 					ambient: Object.fromEntries(
