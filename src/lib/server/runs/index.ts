@@ -1,8 +1,10 @@
 export { runChoices } from './choices';
 export { runsCsv } from './csv';
 export { RUN_TABLES, runConditions, RunFilter } from './filter';
+export { changeRun } from './change';
 export { listRuns } from './list';
 export { openRun } from './open';
+export { proposeLimitSet } from './propose';
 export {
 	acceptRun,
 	addLogLine,
@@ -21,6 +23,7 @@ export {
 	NewRun,
 	OptionalReason,
 	Reason,
+	RunChange,
 	RunListItem,
 	RunQuery,
 	RunView,

@@ -7,6 +7,7 @@ import { reading, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { badRequest } from '../problem';
 import { RUN_TABLES, runConditions } from './filter';
+import { selectHeads } from './heads';
 import type { RunQueryInput, RunRow } from './schemas';
 
 /** Figures that a list shows unless it is asked for others; the rest is on the run's page. */
@@ -17,28 +18,7 @@ const FLAGS = sql`flag g left join reduction d on d.id = g.reduction_id
 	where g.run_id = r.id and (g.reduction_id is null or d.superseded_at is null)`;
 
 function selectRows(trx: Trx, metrics: readonly string[]) {
-	return trx
-		.selectFrom('run as r')
-		.innerJoin('client as c', 'c.id', 'r.clientId')
-		.innerJoin('build as b', 'b.id', 'r.buildId')
-		.innerJoin('engine as e', 'e.id', 'b.engineId')
-		.innerJoin('cell', 'cell.id', 'r.cellId')
-		.innerJoin('fuelBatch as f', 'f.id', 'r.fuelBatchId')
-		.innerJoin('person as p', 'p.id', 'r.loggedBy')
-		.select((eb) => [
-			'r.id',
-			'r.number',
-			'c.code as client',
-			'b.number as build',
-			'b.title as buildTitle',
-			'e.code as engine',
-			'cell.code as cell',
-			'cell.colour as cellColour',
-			'f.code as fuelBatch',
-			'r.kind',
-			'r.state',
-			'r.startedAt',
-			'p.displayName as loggedBy',
+	return selectHeads(trx).select((eb) => [
 			sql<number>`(select count(*) from ${FLAGS})`.as('flags'),
 			sql<Record<string, number> | null>`(select jsonb_object_agg(m.code, m.value) from metric m
 				where m.run_id = r.id and m.is_current and m.code = any(${metrics}::text[]))`.as('figures'),
