@@ -62,3 +62,4 @@ export async function pageData<T>(event: Pick<RequestEvent, 'locals'>, work: () 
 export { refused } from './forms';
 export { labInstant } from './clock';
 export { loopbackDetour } from './loopback';
+export { listing } from './listing';
