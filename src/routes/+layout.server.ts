@@ -1,4 +1,5 @@
 import { actionsOf, type Action } from '$lib/server/access';
+import { cellColours } from '$lib/server/cells';
 import { getClient } from '$lib/server/clients';
 import type { LayoutServerLoad } from './$types';
 
@@ -13,15 +14,20 @@ export const load: LayoutServerLoad = async ({ locals, cookies }) => {
 			theme,
 			rail,
 			may: nobodyMay,
+			cellColours: {},
 			zone: deps.config.labTimeZone,
 			lab: deps.config.labName
 		};
-	const client = who.clientId ? await getClient(deps, who, who.clientId) : null;
+	const [client, colours] = await Promise.all([
+		who.clientId ? getClient(deps, who, who.clientId) : null,
+		cellColours(deps, who)
+	]);
 	return {
 		person: { name: who.name, role: who.role, client },
 		theme,
 		rail,
 		may: actionsOf(who),
+		cellColours: colours,
 		zone: deps.config.labTimeZone,
 		lab: deps.config.labName
 	};

@@ -39,6 +39,16 @@ export interface CellFacts {
 	torqueAt: 'flange' | 'stator';
 	rotorInertiaKgM2: number | null;
 	shaftInertiaKgM2: number | null;
+	/** Between engine and absorber; absent or null: they turn as one. */
+	gear?: Gear | null | undefined;
+}
+
+/** A gear between engine and absorber. */
+export interface Gear {
+	/** Engine revolutions for one of the absorber. */
+	ratio: number;
+	/** Share of the power put in that comes out, 0 to 1, whichever way it flows. */
+	efficiency: number;
 }
 
 /** A measured or computed property with, where known, its standard uncertainty and how it was found. */

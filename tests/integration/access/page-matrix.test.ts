@@ -25,7 +25,15 @@ const pages = readdirSync(ROUTES, { recursive: true, encoding: 'utf8' })
 	.sort();
 
 /** Who may read each page, what its id is, and who may do each of its actions. */
-const TOLD: Record<string, { read: Action | null; id?: keyof Things; actions?: Record<string, Action> }> = {
+interface Told {
+	read: Action | null;
+	/** What the id in its address names, of a client. */
+	id?: keyof Things;
+	/** What it names, of the lab: nothing is foreign there. */
+	labs?: 'cell';
+	actions?: Record<string, Action>;
+}
+const TOLD: Record<string, Told> = {
 	'/': { read: null },
 	'/sign-in': { read: null },
 	'/forgotten': { read: null },
@@ -66,6 +74,18 @@ const TOLD: Record<string, { read: Action | null; id?: keyof Things; actions?: R
 	'/builds/new': { read: 'build.write', actions: { default: 'build.write' } },
 	'/lab': { read: null },
 	'/lab/cells': { read: 'lab.read' },
+	'/lab/cells/[code]': {
+		read: 'lab.read',
+		labs: 'cell',
+		actions: { close: 'closure.write', open: 'closure.write', recompute: 'cell.write' }
+	},
+	'/lab/cells/[code]/edit': { read: 'cell.write', labs: 'cell', actions: { default: 'cell.write' } },
+	'/lab/cells/[code]/torque-chain/new': {
+		read: 'cell.write',
+		labs: 'cell',
+		actions: { default: 'cell.write' }
+	},
+	'/lab/cells/new': { read: 'cell.write', actions: { default: 'cell.write' } },
 	'/lab/clients': { read: 'client.read', actions: { default: 'client.create' } },
 	'/lab/fuels': { read: 'lab.read' },
 	'/lab/limits': { read: 'lab.read' },
@@ -83,6 +103,13 @@ const TOLD: Record<string, { read: Action | null; id?: keyof Things; actions?: R
 		}
 	},
 	'/lab/people/new': { read: 'person.admin', actions: { default: 'person.admin' } },
+	'/lab/limits/[code]': { read: 'lab.read', id: 'limitSet' },
+	'/lab/limits/[code]/new-version': {
+		read: 'limits.write',
+		id: 'limitSet',
+		actions: { default: 'limits.write' }
+	},
+	'/lab/limits/new': { read: 'limits.write', actions: { default: 'limits.write' } },
 	'/runs': { read: 'run.read' },
 	'/runs/[id]': {
 		read: 'run.read',
@@ -152,7 +179,8 @@ beforeAll(async () => {
 		cookies[role] = await signIn(role === 'client' ? 'client@aa.example' : `${role}@lab.example`);
 });
 
-const withId = (page: string, id: string) => page.replace('[id]', id);
+const withId = (page: string, id: string) => page.replace(/\[(id|code)\]/, id);
+const ownId = ({ id, labs }: Told) => (id ? lab.own[id] : labs ? lab[labs] : '');
 const may = (role: Role, action: Action) => (ACTIONS[action].roles as readonly Role[]).includes(role);
 
 describe('every page', () => {
@@ -176,7 +204,7 @@ describe('every page', () => {
 		for (const [page, told] of Object.entries(TOLD)) {
 			if (!told.read) continue;
 			for (const role of ROLES) {
-				const answer = await ask(cookies[role], withId(page, told.id ? lab.own[told.id] : ''));
+				const answer = await ask(cookies[role], withId(page, ownId(told)));
 				expect(answer.status, `${role} ${page}: ${answer.text.slice(0, 200)}`).toBe(
 					may(role, told.read) ? 200 : 403
 				);
@@ -186,7 +214,7 @@ describe('every page', () => {
 
 	it('shows a client a rival’s thing as it shows none', async () => {
 		for (const [page, told] of Object.entries(TOLD)) {
-			if (!told.id) continue;
+			if (!told.id || !told.read || !may('client', told.read)) continue;
 			for (const suffix of ['', '/__data.json']) {
 				const foreign = await ask(cookies.client, withId(page, lab.foreign[told.id]) + suffix);
 				const absent = await ask(cookies.client, withId(page, ABSENT) + suffix);
@@ -202,7 +230,7 @@ describe('every page', () => {
 
 	it('holds nothing of a rival on any page that a client may open', async () => {
 		for (const [page, told] of Object.entries(TOLD)) {
-			const answer = await ask(cookies.client, withId(page, told.id ? lab.own[told.id] : ''));
+			const answer = await ask(cookies.client, withId(page, ownId(told)));
 			expect(answer.text, page).not.toMatch(new RegExp(`${CANARY}|BB-[RB]-`));
 		}
 	});
@@ -213,7 +241,7 @@ describe('every page', () => {
 			for (const [name, action] of Object.entries(told.actions ?? {})) {
 				const suffix = name === 'default' ? '' : `?/${name}`;
 				for (const role of ROLES.filter((each) => !may(each, action))) {
-					const answer = await ask(cookies[role], withId(page, told.id ? lab.own[told.id] : '') + suffix, {
+					const answer = await ask(cookies[role], withId(page, ownId(told)) + suffix, {
 						reason: 'x',
 						text: 'x',
 						state: 'ready'
@@ -221,7 +249,7 @@ describe('every page', () => {
 					expect(answer.status, `${role} ${page}${suffix}`).toBe(403);
 					asked++;
 				}
-				const nobody = await ask(null, withId(page, told.id ? lab.own[told.id] : '') + suffix, {
+				const nobody = await ask(null, withId(page, ownId(told)) + suffix, {
 					reason: 'x'
 				});
 				expect(nobody.status, `nobody ${page}${suffix}`).toBe(303);

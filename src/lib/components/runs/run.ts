@@ -73,6 +73,8 @@ export interface RunRecord {
 	metrics: Metrics;
 	points: Point[];
 	flags: RunFlag[];
+	/** Versions that its figures were made with; null while there are none. */
+	inputs: { torqueChainVersion: number | null } | null;
 }
 
 export interface LogLine {

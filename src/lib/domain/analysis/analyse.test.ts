@@ -329,3 +329,34 @@ describe('describeFile', () => {
 			error: expect.stringMatching(/web page/) as string
 		}));
 });
+
+describe('torque weighed behind a gear', () => {
+	const geared = (torqueAt: 'flange' | 'stator') =>
+		readyOf(
+			analyse(sweep(HEADER, three), {
+				cell: {
+					torqueAt,
+					rotorInertiaKgM2: null,
+					shaftInertiaKgM2: null,
+					gear: { ratio: 2, efficiency: 0.96 }
+				}
+			})
+		);
+	const plain = readyOf(analyse(sweep(HEADER, three)));
+	const peak = (of: { metrics: Record<string, { value: number }> }) => of.metrics.peak_power!.value;
+
+	it('stands at the engine in figures and trace, is said, and is kept as recorded beside', () => {
+		const found = geared('stator');
+		expect(peak(found)).toBeCloseTo(peak(plain) / (2 * 0.96), 9);
+		expect(found.findings.find(({ code }) => code === 'torque_through_gear')?.message).toMatch(
+			/ratio 2 and efficiency 0\.96/
+		);
+		const recorded = found.trace.columns.find(({ code }) => code.endsWith('(as recorded)'));
+		expect(recorded?.values[0]).toBeCloseTo(torqueAt(0), 3);
+	});
+	it('is left as it is where a flange weighs it before the gear', () => {
+		const found = geared('flange');
+		expect(peak(found)).toBe(peak(plain));
+		expect(found.findings.map(({ code }) => code)).not.toContain('torque_through_gear');
+	});
+});

@@ -9,6 +9,7 @@ import { importFindings } from '../trace/import-findings';
 import { missingNeeds, proposeMap, toMap, type ProposedColumn } from '../trace/propose-map';
 import { checkSamples } from '../trace/quality';
 import { channelInfo, type Trace } from '../trace/trace';
+import { throughGear } from '../trace/through-gear';
 import { withDerived } from '../trace/with-derived';
 import { contextFindings } from './context-findings';
 import { figureFindings } from './figure-findings';
@@ -118,7 +119,8 @@ export function analyseFile(bytes: Uint8Array, context: RunContext, _file: { nam
 		};
 	withConfidence(applied.trace, chosen.proposal, context.map !== undefined);
 	const samples = checkSamples(applied.trace);
-	const { trace, findings: derivedFindings } = withDerived(applied.trace, context);
+	const geared = throughGear(applied.trace, context.cell);
+	const { trace, findings: derivedFindings } = withDerived(geared.trace, context);
 	const reduced = reduce(trace, samples.spikes, applied.medianStepS, context);
 	const judged = judge(trace, reduced.metrics, context);
 	const findings = [
@@ -126,6 +128,7 @@ export function analyseFile(bytes: Uint8Array, context: RunContext, _file: { nam
 		...importFindings(read, chosen.columns),
 		...(context.map ? [] : uncertainFindings(chosen.proposal)),
 		...samples.findings,
+		...geared.findings,
 		...derivedFindings,
 		...figureFindings(trace, reduced, samples.spikes, context),
 		...contextFindings(trace, context),

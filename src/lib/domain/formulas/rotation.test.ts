@@ -1,6 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import type { CellFacts, EngineFacts } from '../model';
-import { angularAccelerationRadS2, engineTorqueNm, inertiaBeforeSensor } from './rotation';
+import {
+	angularAccelerationRadS2,
+	deadWeightTorqueNm,
+	engineTorqueNm,
+	inertiaBeforeSensor,
+	throughGearNm
+} from './rotation';
 
 const engine = (inertiaKgM2: number | null): EngineFacts => ({
 	displacementL: 2,
@@ -35,9 +41,33 @@ describe('inertia before the sensor', () => {
 		const found = inertiaBeforeSensor(engine(0.15), cell('stator', null, null));
 		expect(found).toEqual({ inertiaKgM2: 0.15, counted: ['engine'], missing: ['shaft', 'rotor'] });
 	});
+	it('counts a rotor behind a gear by its energy: at half the speed a quarter, and the loss on top', () => {
+		const geared = { ...cell('stator'), gear: { ratio: 2, efficiency: 0.96 } };
+		expect(inertiaBeforeSensor(engine(0.15), geared)?.inertiaKgM2).toBeCloseTo(0.17 + 0.3 / 4 / 0.96, 12);
+	});
+	it('leaves a gear out where torque is weighed before it', () => {
+		const geared = { ...cell('flange'), gear: { ratio: 2, efficiency: 0.96 } };
+		expect(inertiaBeforeSensor(engine(0.15), geared)?.inertiaKgM2).toBeCloseTo(0.17, 12);
+	});
 	it('is unknown without the engine', () => {
 		expect(inertiaBeforeSensor(engine(null), cell('flange'))).toBeNull();
 	});
+});
+
+describe('a gear between engine and absorber', () => {
+	const gear = { ratio: 2.5, efficiency: 0.97 };
+	it('keeps power but for its loss, whoever drives', () => {
+		// 4000 rev/min at the engine are 1600 at the absorber; powers as torque times speed.
+		expect((throughGearNm(240, gear) * 4000 * 0.97) / (240 * 1600)).toBeCloseTo(1, 12);
+		expect((throughGearNm(-240, gear) * 4000) / (-240 * 1600 * 0.97)).toBeCloseTo(1, 12);
+	});
+	it('of one to one without loss changes nothing', () =>
+		expect(throughGearNm(123.4, { ratio: 1, efficiency: 1 })).toBe(123.4));
+});
+
+describe('a dead weight on the arm', () => {
+	it('weighs mass, gravity and arm', () =>
+		expect(deadWeightTorqueNm(20, 0.5, 9.81832)).toBeCloseTo(98.1832, 10));
 });
 
 describe('angular acceleration', () => {

@@ -94,4 +94,25 @@ describe('whether an engine fits', () => {
 		expect(codes(brake, engine(null), 'motoring')).toEqual(['cannot_drive']);
 		expect(codes({ ...brake, kind: 'ac' }, engine([[1000, 900]]), 'motoring')).toEqual([]);
 	});
+
+	it('meets the machine through its gear: slower by the ratio, with torque and power to match', () => {
+		// Half the speed at the brake, 400 N·m there: 200 N·m and 16 000 rev/min at the engine, its 4 % of loss on top.
+		const geared = { ...brake, gear: { ratio: 2, efficiency: 0.96 } };
+		const at = (torqueNm: number) =>
+			codes(
+				geared,
+				engine(
+					[
+						[1000, torqueNm],
+						[7000, torqueNm]
+					],
+					16_000
+				),
+				'power_sweep'
+			);
+		expect(at(208)).toEqual([]);
+		expect(at(209)).toEqual(['torque']);
+		const [remark] = absorberRemarks(geared, engine([[1000, 100]], 16_001), null);
+		expect(remark!.message).toContain('the machine 16000 rev/min through its gear at most');
+	});
 });

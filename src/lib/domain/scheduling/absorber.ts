@@ -1,4 +1,4 @@
-import type { RunKind } from '../model';
+import type { Gear, RunKind } from '../model';
 
 type Line = readonly (readonly [rpm: number, torqueNm: number])[];
 
@@ -10,6 +10,8 @@ export interface AbsorberFacts {
 	maxSpeedRpm: number;
 	/** Torque limit over speed, speeds rising; null = from the machine's own power and torque. */
 	envelope: Line | null;
+	/** Between it and the engine; absent or null: they turn as one. */
+	gear?: Gear | null | undefined;
 }
 
 /** What an engine is expected to give; null = not recorded. */
@@ -48,6 +50,24 @@ export function absorbableTorqueNm(absorber: AbsorberFacts, rpm: number): number
 	return Math.min(absorber.maxTorqueNm, (60_000 * absorber.maxPowerKw) / (2 * Math.PI * rpm));
 }
 
+/**
+ * The machine as the engine meets it through a gear of ratio i and efficiency η: i times its speed, `1/(i·η)` of its torque,
+ * `1/η` of its power, since the gear takes the rest.
+ */
+function atEngine(absorber: AbsorberFacts): AbsorberFacts {
+	if (!absorber.gear) return absorber;
+	const { ratio, efficiency } = absorber.gear;
+	return {
+		kind: absorber.kind,
+		maxPowerKw: absorber.maxPowerKw / efficiency,
+		maxTorqueNm: absorber.maxTorqueNm / (ratio * efficiency),
+		maxSpeedRpm: absorber.maxSpeedRpm * ratio,
+		envelope:
+			absorber.envelope?.map(([rpm, torqueNm]) => [rpm * ratio, torqueNm / (ratio * efficiency)] as const) ??
+			null
+	};
+}
+
 /** Where the expected torque is furthest above what can be held, as a ratio; a line against a hyperbola has its worst anywhere. */
 function worstExcess(
 	absorber: AbsorberFacts,
@@ -72,11 +92,13 @@ function worstExcess(
  * an empty list means that the recorded facts fit. It judges steady torque only: no torsional vibration, no shaft, no cooling.
  */
 export function absorberRemarks(
-	absorber: AbsorberFacts,
+	machine: AbsorberFacts,
 	engine: EngineDemand,
 	kind: RunKind | null
 ): Remark[] {
 	const remarks: Remark[] = [];
+	const absorber = atEngine(machine);
+	const through = machine.gear ? ' through its gear' : '';
 	if (kind === 'motoring' && BRAKES_ONLY.includes(absorber.kind))
 		remarks.push({
 			code: 'cannot_drive',
@@ -86,7 +108,7 @@ export function absorberRemarks(
 	if (topRpm > absorber.maxSpeedRpm)
 		remarks.push({
 			code: 'speed',
-			message: `the engine turns up to ${topRpm} rev/min, the machine ${absorber.maxSpeedRpm} rev/min at most`
+			message: `the engine turns up to ${topRpm} rev/min, the machine ${Math.floor(absorber.maxSpeedRpm)} rev/min${through} at most`
 		});
 	// A motored engine gives no torque of its own to take up.
 	const expected = kind === 'motoring' ? null : engine.expectedTorque;
@@ -94,7 +116,7 @@ export function absorberRemarks(
 	if (excess)
 		remarks.push({
 			code: 'torque',
-			message: `the engine is expected to give ${Math.round(excess.has)} N·m at ${Math.round(excess.rpm)} rev/min, the machine can hold ${Math.floor(excess.can)} N·m there`
+			message: `the engine is expected to give ${Math.round(excess.has)} N·m at ${Math.round(excess.rpm)} rev/min, the machine can hold ${Math.floor(excess.can)} N·m there${through}`
 		});
 	const unknown = [
 		...(engine.maxSpeedRpm === null ? ['top speed'] : []),

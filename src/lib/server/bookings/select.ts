@@ -1,4 +1,5 @@
 import { sql } from 'kysely';
+import { gearInForce } from '../cells';
 import type { Trx } from '../db';
 
 /** A booking with what a view of it needs; row-level security decides which. */
@@ -40,6 +41,7 @@ export function selectBookings(trx: Trx) {
 			'c.maxTorqueNm',
 			'c.maxSpeedRpm',
 			'c.envelope',
+			gearInForce(sql`c.id`, sql`lower(b.during)`).as('gear'),
 			'c.openingHours',
 			'bu.number as build',
 			'bu.title as buildTitle',

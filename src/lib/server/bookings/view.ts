@@ -47,7 +47,8 @@ function remarksOn(row: BookingRow, clashes: Clash[], zone: string): Remark[] {
 		maxPowerKw: row.maxPowerKw,
 		maxTorqueNm: row.maxTorqueNm,
 		maxSpeedRpm: row.maxSpeedRpm,
-		envelope: row.envelope as Line
+		envelope: row.envelope as Line,
+		gear: row.gear
 	};
 	const engine = { maxSpeedRpm: row.engineMaxSpeedRpm, expectedTorque: row.expectedTorque as Line };
 	for (const { code, message } of absorberRemarks(absorber, engine, row.kind as Booking['kind']))

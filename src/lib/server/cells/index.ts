@@ -4,10 +4,28 @@ import type { z } from 'zod';
 import type { Principal } from '../access';
 import { jsonb, reading, recordAudit, writing, type Trx } from '../db';
 import type { Deps } from '../deps';
+import { stale } from '../problem';
 import { resolve } from '../refs';
-import type { Cell, NewCell } from './schemas';
+import { chainsInForce, insertChain } from './chain-rows';
+import type { Cell, CellChange, NewCell } from './schemas';
 
-export { CellView, NewCell, type Cell } from './schemas';
+export { chainInForce, gearInForce } from './chain-rows';
+export {
+	ABSORBER_KINDS,
+	AddedChainView,
+	CellChange,
+	CellView,
+	NewCell,
+	NewTorqueChain,
+	TorqueChainView,
+	TORQUE_PLACES,
+	TouchedQuery,
+	TouchedView,
+	type Cell,
+	type TorqueChain,
+	type Touched
+} from './schemas';
+export { addTorqueChain, listTorqueChain, recomputeCell, runsBehind, runsTouchedBy } from './torque-chain';
 
 function selectCells(trx: Trx) {
 	return trx
@@ -21,9 +39,6 @@ function selectCells(trx: Trx) {
 			'maxTorqueNm',
 			'maxSpeedRpm',
 			'envelope',
-			'torqueAt',
-			'rotorInertiaKgM2',
-			'shaftInertiaKgM2',
 			'rigUpMinutes',
 			'rigDownMinutes',
 			'openingHours',
@@ -37,62 +52,83 @@ function selectCells(trx: Trx) {
 					.whereRef('cellFuel.cellId', '=', 'cell.id')
 					.orderBy('fuel.code')
 			).as('fuelRows')
-		]);
+		])
+		.orderBy('code');
 }
 
-type Row = Awaited<ReturnType<ReturnType<typeof selectCells>['executeTakeFirstOrThrow']>>;
-
-function toCell(row: Row): Cell {
-	return {
-		id: row.id,
-		code: row.code,
-		name: row.name,
-		absorber: {
-			kind: row.absorberKind as Cell['absorber']['kind'],
-			maxPowerKw: row.maxPowerKw,
-			maxTorqueNm: row.maxTorqueNm,
-			maxSpeedRpm: row.maxSpeedRpm
-		},
-		envelope: row.envelope as Cell['envelope'],
-		torqueAt: row.torqueAt as Cell['torqueAt'],
-		rotorInertiaKgM2: row.rotorInertiaKgM2,
-		shaftInertiaKgM2: row.shaftInertiaKgM2,
-		fuels: row.fuelRows.length ? row.fuelRows.map((fuel) => fuel.code) : null,
-		rigUpMinutes: row.rigUpMinutes,
-		rigDownMinutes: row.rigDownMinutes,
-		openingHours: row.openingHours as Cell['openingHours'],
-		colour: row.colour,
-		version: row.version
-	};
+async function readCells(trx: Trx, now: Date, id?: string): Promise<Cell[]> {
+	let cells = selectCells(trx);
+	if (id) cells = cells.where('id', '=', id);
+	const rows = await cells.execute();
+	const chains = await chainsInForce(trx, now, id ? [id] : null);
+	return rows.map((row) => {
+		const { version: torqueChainVersion, ...chain } = chains.get(row.id)!;
+		return {
+			id: row.id,
+			code: row.code,
+			name: row.name,
+			absorber: {
+				kind: row.absorberKind as Cell['absorber']['kind'],
+				maxPowerKw: row.maxPowerKw,
+				maxTorqueNm: row.maxTorqueNm,
+				maxSpeedRpm: row.maxSpeedRpm
+			},
+			envelope: row.envelope as Cell['envelope'],
+			...chain,
+			torqueChainVersion,
+			fuels: row.fuelRows.length ? row.fuelRows.map((fuel) => fuel.code) : null,
+			rigUpMinutes: row.rigUpMinutes,
+			rigDownMinutes: row.rigDownMinutes,
+			openingHours: row.openingHours as Cell['openingHours'],
+			colour: row.colour,
+			version: row.version
+		};
+	});
 }
+
+const readCell = async (trx: Trx, now: Date, id: string): Promise<Cell> =>
+	(await readCells(trx, now, id))[0]!;
+
+async function fuelIdsOf(trx: Trx, fuels: readonly string[] | null | undefined): Promise<string[]> {
+	const ids = new Set<string>();
+	for (const [index, fuel] of (fuels ?? []).entries())
+		ids.add((await resolve(trx, 'fuel', fuel, { field: `fuels.${index}` })).id);
+	return [...ids];
+}
+
+const absorberColumns = (absorber: Cell['absorber']) => ({
+	absorberKind: absorber.kind,
+	maxPowerKw: absorber.maxPowerKw,
+	maxTorqueNm: absorber.maxTorqueNm,
+	maxSpeedRpm: absorber.maxSpeedRpm
+});
 
 export async function createCell(deps: Deps, who: Principal, input: z.output<typeof NewCell>): Promise<Cell> {
 	return writing(deps.pools, who, async (trx) => {
-		const fuelIds: string[] = [];
-		for (const [index, fuel] of (input.fuels ?? []).entries())
-			fuelIds.push((await resolve(trx, 'fuel', fuel, { field: `fuels.${index}` })).id);
+		const fuelIds = await fuelIdsOf(trx, input.fuels);
 		const { id } = await trx
 			.insertInto('cell')
 			.values({
 				code: input.code,
 				name: input.name,
-				absorberKind: input.absorber.kind,
-				maxPowerKw: input.absorber.maxPowerKw,
-				maxTorqueNm: input.absorber.maxTorqueNm,
-				maxSpeedRpm: input.absorber.maxSpeedRpm,
+				...absorberColumns(input.absorber),
 				envelope: input.envelope ? (jsonb(input.envelope) as never) : null,
-				torqueAt: input.torqueAt,
-				rotorInertiaKgM2: input.rotorInertiaKgM2 ?? null,
-				shaftInertiaKgM2: input.shaftInertiaKgM2 ?? null,
 				rigUpMinutes: input.rigUpMinutes,
 				rigDownMinutes: input.rigDownMinutes,
 				openingHours: input.openingHours ? (jsonb(input.openingHours) as never) : null,
 				// The next colour of the set, so that neighbours differ.
-				colour: sql<number>`(select count(*) from cell)::smallint`
+				colour: input.colour ?? sql<number>`(select count(*) from cell)::smallint`
 			})
 			.returning('id')
 			.executeTakeFirstOrThrow();
 		for (const fuelId of fuelIds) await trx.insertInto('cellFuel').values({ cellId: id, fuelId }).execute();
+		const first = {
+			cellId: id,
+			version: 1,
+			validFrom: null,
+			reason: 'As first recorded with the cell'
+		};
+		await insertChain(trx, who, first, input);
 		await recordAudit(trx, who, {
 			action: 'cell.create',
 			subject: 'cell',
@@ -100,19 +136,69 @@ export async function createCell(deps: Deps, who: Principal, input: z.output<typ
 			clientId: null,
 			after: input
 		});
-		return toCell(await selectCells(trx).where('id', '=', id).executeTakeFirstOrThrow());
+		return readCell(trx, deps.now(), id);
+	});
+}
+
+/** Changes what a cell is now. How torque is weighed is not changed but gets a new version: `addTorqueChain`. */
+export async function changeCell(
+	deps: Deps,
+	who: Principal,
+	ref: string,
+	change: z.output<typeof CellChange>,
+	ifMatch: number | null
+): Promise<Cell> {
+	return writing(deps.pools, who, async (trx) => {
+		const { id } = await resolve(trx, 'cell', ref);
+		await trx.selectFrom('cell').select('id').where('id', '=', id).forUpdate().execute();
+		const before = await readCell(trx, deps.now(), id);
+		if (ifMatch !== null && ifMatch !== before.version) throw stale();
+		const { absorber, envelope, openingHours, fuels, ...plain } = change;
+		await trx
+			.updateTable('cell')
+			.set({
+				version: before.version + 1,
+				...plain,
+				...(absorber ? absorberColumns(absorber) : {}),
+				...(envelope === undefined ? {} : { envelope: envelope && (jsonb(envelope) as never) }),
+				...(openingHours === undefined
+					? {}
+					: { openingHours: openingHours && (jsonb(openingHours) as never) })
+			})
+			.where('id', '=', id)
+			.execute();
+		if (fuels !== undefined) {
+			const fuelIds = await fuelIdsOf(trx, fuels);
+			await trx.deleteFrom('cellFuel').where('cellId', '=', id).execute();
+			for (const fuelId of fuelIds) await trx.insertInto('cellFuel').values({ cellId: id, fuelId }).execute();
+		}
+		await recordAudit(trx, who, {
+			action: 'cell.change',
+			subject: 'cell',
+			subjectId: id,
+			clientId: null,
+			before,
+			after: change
+		});
+		return readCell(trx, deps.now(), id);
 	});
 }
 
 export async function listCells(deps: Deps, who: Principal): Promise<Cell[]> {
-	return reading(deps.pools, who, async (trx) =>
-		(await selectCells(trx).orderBy('code').execute()).map(toCell)
-	);
+	return reading(deps.pools, who, (trx) => readCells(trx, deps.now()));
 }
 
 export async function getCell(deps: Deps, who: Principal, ref: string): Promise<Cell> {
 	return reading(deps.pools, who, async (trx) => {
 		const { id } = await resolve(trx, 'cell', ref);
-		return toCell(await selectCells(trx).where('id', '=', id).executeTakeFirstOrThrow());
+		return readCell(trx, deps.now(), id);
 	});
+}
+
+/** Each cell's colour by its code: a tag anywhere names the code alone. */
+export async function cellColours(deps: Deps, who: Principal): Promise<Record<string, number>> {
+	const rows = await reading(deps.pools, who, (trx) =>
+		trx.selectFrom('cell').select(['code', 'colour']).execute()
+	);
+	return Object.fromEntries(rows.map(({ code, colour }) => [code, colour]));
 }

@@ -183,9 +183,6 @@ export interface Cell {
   openingHours: Json | null;
   rigDownMinutes: Generated<number>;
   rigUpMinutes: Generated<number>;
-  rotorInertiaKgM2: number | null;
-  shaftInertiaKgM2: number | null;
-  torqueAt: Generated<string>;
   version: Generated<number>;
 }
 
@@ -430,6 +427,23 @@ export interface Run {
   version: Generated<number>;
 }
 
+export interface TorqueChain {
+  armM: number | null;
+  cellId: string;
+  createdAt: Generated<Timestamp>;
+  createdBy: string | null;
+  gearEfficiency: number | null;
+  gearRatio: number | null;
+  gravityMps2: number | null;
+  id: Generated<string>;
+  reason: string;
+  rotorInertiaKgM2: number | null;
+  shaftInertiaKgM2: number | null;
+  torqueAt: string;
+  validFrom: Timestamp | null;
+  version: number;
+}
+
 export interface Trace {
   channels: Json | null;
   clientId: string;
@@ -488,5 +502,6 @@ export interface DB {
   person: Person;
   reduction: Reduction;
   run: Run;
+  torqueChain: TorqueChain;
   trace: Trace;
 }

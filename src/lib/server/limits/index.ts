@@ -1,5 +1,6 @@
 import type { z } from 'zod';
 import type { Rule } from '$lib/domain/model';
+import { periodsOf } from '$lib/domain/versions/periods';
 import type { Principal } from '../access';
 import { jsonb, reading, recordAudit, writing, type Trx } from '../db';
 import type { Deps } from '../deps';
@@ -7,7 +8,7 @@ import { stale } from '../problem';
 import { clientFor, resolve } from '../refs';
 import type { NewLimitSet, NewLimitSetVersion } from './schemas';
 
-export { LimitSetView, NewLimitSet, NewLimitSetVersion } from './schemas';
+export { LimitSetVersionView, LimitSetView, NewLimitSet, NewLimitSetVersion } from './schemas';
 
 /** Each set with its newest version. */
 function selectSets(trx: Trx) {
@@ -91,6 +92,36 @@ export async function getLimitSet(deps: Deps, who: Principal, ref: string) {
 	return reading(deps.pools, who, async (trx) => {
 		const { id } = await resolve(trx, 'limit_set', ref);
 		return toSet(await selectSets(trx).where('s.id', '=', id).executeTakeFirstOrThrow());
+	});
+}
+
+/** Every version, newest first, with when runs are judged by it. */
+export async function listLimitSetVersions(deps: Deps, who: Principal, ref: string) {
+	return reading(deps.pools, who, async (trx) => {
+		const { id } = await resolve(trx, 'limit_set', ref);
+		const rows = await trx
+			.selectFrom('limitSetVersion as v')
+			.leftJoin('person as p', 'p.id', 'v.createdBy')
+			.select(['v.version', 'v.inForceFrom', 'v.rules', 'v.createdAt', 'p.displayName'])
+			.where('v.limitSetId', '=', id)
+			.orderBy('v.version', 'desc')
+			.execute();
+		const dated = rows.map(({ version, inForceFrom }) => ({ version, validFrom: inForceFrom }));
+		const periods = new Map(
+			periodsOf(dated).map(({ version: { version, validFrom }, period }) => [
+				version,
+				// What ran before every version is judged by the first one, whatever its date.
+				{ from: period.from ?? (version === 1 ? null : validFrom), to: period.to }
+			])
+		);
+		return rows.map(({ rules, displayName, createdAt, version, inForceFrom }) => ({
+			version,
+			inForceFrom,
+			inForce: periods.get(version) ?? null,
+			writtenBy: displayName,
+			writtenAt: createdAt,
+			rules: rules as unknown as Rule[]
+		}));
 	});
 }
 

@@ -1,14 +1,25 @@
 import { z } from 'zod';
+import { parseExpression } from '$lib/domain/limits/expression';
 import { FLAG_SEVERITIES, FUEL_PROPERTIES, RELATIONS } from '$lib/domain/model';
 import { fields } from '../api';
 
 const name = fields.label(120);
+/** Read here as the judge will read it, so that nobody learns from a run that a rule was never held against it. */
+const Expression = z
+	.string()
+	.trim()
+	.min(1, 'must not be empty')
+	.max(400, 'at most 400 characters')
+	.superRefine((text, check) => {
+		const parsed = parseExpression(text);
+		if (!parsed.ok) check.addIssue({ code: 'custom', message: parsed.error });
+	});
 const Subject = z.union(
 	[
 		z.strictObject({ channel: name }),
 		z.strictObject({ metric: name }),
 		z.strictObject({ fuel: z.enum(FUEL_PROPERTIES) }),
-		z.strictObject({ expression: z.string().trim().min(1).max(400) })
+		z.strictObject({ expression: Expression })
 	],
 	{ error: 'name one of channel, metric, fuel or expression' }
 );
@@ -79,5 +90,17 @@ export const LimitSetView = z.object({
 	/** The newest version's number; also the set's ETag. */
 	version: z.number(),
 	inForceFrom: fields.instantOut,
+	rules: z.array(z.unknown())
+});
+export type LimitSet = z.input<typeof LimitSetView>;
+
+export const LimitSetVersionView = z.object({
+	version: z.number(),
+	inForceFrom: fields.instantOut,
+	/** When runs are judged by it; null: another version with the same date overtook it. */
+	inForce: z.object({ from: fields.instantOut.nullable(), to: fields.instantOut.nullable() }).nullable(),
+	/** Null for a client where it was not one of theirs. */
+	writtenBy: z.string().nullable(),
+	writtenAt: fields.instantOut,
 	rules: z.array(z.unknown())
 });

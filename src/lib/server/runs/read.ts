@@ -1,7 +1,7 @@
 import { sql } from 'kysely';
 import type { Trx } from '../db';
 import { selectHeads } from './heads';
-import type { RunDetail } from './schemas';
+import type { RunDetail, RunInputs } from './schemas';
 import { stillNeeded } from './still-needed';
 
 type TraceViewIn = RunDetail['traces'][number];
@@ -45,7 +45,7 @@ export async function readRun(trx: Trx, id: string): Promise<RunDetail> {
 	const reduction = await trx
 		.selectFrom('reduction as d')
 		.innerJoin('trace as t', 't.id', 'd.traceId')
-		.select('d.points')
+		.select(['d.points', 'd.inputs', 'd.methodVersion', 'd.computedAt'])
 		.where('d.runId', '=', id)
 		.where('d.supersededAt', 'is', null)
 		.where('t.isPrimary', '=', true)
@@ -63,7 +63,21 @@ export async function readRun(trx: Trx, id: string): Promise<RunDetail> {
 			metrics.map(({ code, at, ...rest }) => [code, { ...rest, at: at as Record<string, number> | null }])
 		),
 		points: (reduction?.points ?? []) as RunDetail['points'],
-		flags
+		flags,
+		inputs: reduction ? inputsOf(reduction) : null
+	};
+}
+
+function inputsOf(reduction: { inputs: unknown; methodVersion: string; computedAt: Date }): RunInputs {
+	const inputs = reduction.inputs as Partial<Record<string, number>>;
+	return {
+		methodVersion: reduction.methodVersion,
+		computedAt: reduction.computedAt,
+		engineVersion: inputs.engineVersion ?? null,
+		cellVersion: inputs.cellVersion ?? null,
+		torqueChainVersion: inputs.torqueChainVersion ?? null,
+		fuelBatchVersion: inputs.fuelBatchVersion ?? null,
+		limitSetVersion: inputs.limitSetVersion ?? null
 	};
 }
 

@@ -106,6 +106,18 @@ const FlagView = z.object({
 });
 
 const RUN_STATES = ['open', 'closed', 'accepted', 'voided'] as const;
+/** What the current figures were made with, as versions; null: not recorded when they were made. */
+const InputsView = z.object({
+	methodVersion: z.string(),
+	computedAt: fields.instantOut,
+	engineVersion: z.number().nullable(),
+	cellVersion: z.number().nullable(),
+	/** Of the cell's torque chain, in force at the run's start. */
+	torqueChainVersion: z.number().nullable(),
+	fuelBatchVersion: z.number().nullable(),
+	limitSetVersion: z.number().nullable()
+});
+export type RunInputs = z.input<typeof InputsView>;
 
 const Head = {
 	id: z.string(),
@@ -146,6 +158,8 @@ export const RunView = z.object({
 	metrics: z.record(z.string(), MetricView),
 	points: z.array(z.record(z.string(), z.number().nullable())),
 	flags: z.array(FlagView),
+	/** Null while the primary trace has no figures. */
+	inputs: InputsView.nullable(),
 	version: z.number()
 });
 export type RunDetail = z.input<typeof RunView>;

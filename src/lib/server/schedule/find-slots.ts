@@ -10,6 +10,7 @@ import {
 } from '$lib/domain/scheduling';
 import type { RunKind } from '$lib/domain/model';
 import { requireMay, type Principal } from '../access';
+import { gearInForce } from '../cells';
 import { rangeOf, reading, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { wrongField } from '../problem';
@@ -20,7 +21,7 @@ import { takenByCell } from './taken';
 type Line = [number, number][] | null;
 const LONGEST_RIG_MINUTES = 10_080;
 
-async function cellsFor(trx: Trx, fuelId: string | null) {
+async function cellsFor(trx: Trx, fuelId: string | null, at: Date) {
 	return trx
 		.selectFrom('cell as c')
 		.select([
@@ -32,6 +33,7 @@ async function cellsFor(trx: Trx, fuelId: string | null) {
 			'c.maxTorqueNm',
 			'c.maxSpeedRpm',
 			'c.envelope',
+			gearInForce(sql`c.id`, sql`${at}::timestamptz`).as('gear'),
 			'c.openingHours',
 			'c.rigUpMinutes',
 			'c.rigDownMinutes',
@@ -93,7 +95,7 @@ export async function findSlots(deps: Deps, who: Principal, wish: FirstFitWishIn
 		const taken = await takenByCell(trx, searched);
 		const slots: FirstFit['slots'] = [];
 		const refused: FirstFit['refused'] = [];
-		for (const cell of await cellsFor(trx, fuelId)) {
+		for (const cell of await cellsFor(trx, fuelId, window.from)) {
 			const { code, rigUpMinutes, rigDownMinutes } = cell;
 			const why = unsuited(
 				cell,

@@ -7,6 +7,7 @@ import type {
 	RunContext,
 	RunSettings
 } from '$lib/domain/model';
+import { chainInForce } from '../cells';
 import type { Trx } from '../db';
 import { rulesInForce } from '../limits';
 
@@ -46,9 +47,6 @@ export async function readContext(trx: Trx, traceId: string): Promise<TraceConte
 			'e.expectedTorque',
 			'cell.id as cellId',
 			'cell.version as cellVersion',
-			'cell.torqueAt',
-			'cell.rotorInertiaKgM2',
-			'cell.shaftInertiaKgM2',
 			'f.id as fuelBatchId',
 			'f.version as fuelBatchVersion',
 			'f.properties'
@@ -65,11 +63,13 @@ export async function readContext(trx: Trx, traceId: string): Promise<TraceConte
 		maxSpeedRpm: row.maxSpeedRpm,
 		expectedTorque: row.expectedTorque as EngineFacts['expectedTorque']
 	};
-	const cell: CellFacts = {
-		torqueAt: row.torqueAt as CellFacts['torqueAt'],
-		rotorInertiaKgM2: row.rotorInertiaKgM2,
-		shaftInertiaKgM2: row.shaftInertiaKgM2
-	};
+	// Arm and gravity weigh the sensor at its calibration, not the run: no figure takes them.
+	const { torqueAt, rotorInertiaKgM2, shaftInertiaKgM2, gear, version } = await chainInForce(
+		trx,
+		row.cellId,
+		row.startedAt
+	);
+	const cell: CellFacts = { torqueAt, rotorInertiaKgM2, shaftInertiaKgM2, gear };
 	return {
 		context: {
 			kind: row.kind as RunContext['kind'],
@@ -88,6 +88,7 @@ export async function readContext(trx: Trx, traceId: string): Promise<TraceConte
 			engineVersion: row.engineVersion,
 			cell: row.cellId,
 			cellVersion: row.cellVersion,
+			torqueChainVersion: version,
 			fuelBatch: row.fuelBatchId,
 			fuelBatchVersion: row.fuelBatchVersion,
 			limitSet: row.limitSetId,

@@ -69,3 +69,4 @@ export { labInstant } from './clock';
 export { linkPage } from './link-page';
 export { loopbackDetour } from './loopback';
 export { SESSION_COOKIE, sessionCookie } from './session-cookie';
+export { listing } from './listing';

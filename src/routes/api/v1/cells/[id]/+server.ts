@@ -1,5 +1,5 @@
 import { operation } from '$lib/server/api';
-import { CellView, getCell } from '$lib/server/cells';
+import { CellChange, CellView, changeCell, getCell } from '$lib/server/cells';
 
 export const GET = operation({
 	id: 'getCell',
@@ -7,4 +7,13 @@ export const GET = operation({
 	action: 'lab.read',
 	answer: CellView,
 	run: ({ deps, who, params }) => getCell(deps, who, params.id!)
+});
+
+export const PATCH = operation({
+	id: 'changeCell',
+	summary: 'Change what a cell is; its torque chain has versions of its own',
+	action: 'cell.write',
+	body: CellChange,
+	answer: CellView,
+	run: ({ deps, who, params, body, ifMatch }) => changeCell(deps, who, params.id!, body, ifMatch)
 });

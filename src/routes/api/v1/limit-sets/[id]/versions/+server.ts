@@ -1,5 +1,20 @@
+import { z } from 'zod';
 import { operation } from '$lib/server/api';
-import { addLimitSetVersion, LimitSetView, NewLimitSetVersion } from '$lib/server/limits';
+import {
+	addLimitSetVersion,
+	LimitSetVersionView,
+	LimitSetView,
+	listLimitSetVersions,
+	NewLimitSetVersion
+} from '$lib/server/limits';
+
+export const GET = operation({
+	id: 'listLimitSetVersions',
+	summary: 'Every version of a limit set, newest first, with when runs are judged by it',
+	action: 'lab.read',
+	answer: z.object({ items: z.array(LimitSetVersionView) }),
+	run: async ({ deps, who, params }) => ({ items: await listLimitSetVersions(deps, who, params.id!) })
+});
 
 export const POST = operation({
 	id: 'addLimitSetVersion',
