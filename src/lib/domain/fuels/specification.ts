@@ -3,14 +3,14 @@ import { labelOf } from '../display/labels';
 import { FUEL_PROPERTIES, type FuelFacts, type FuelPropertyName } from '../model';
 
 /** What a property of a fuel may be; a side left out is open. */
-export interface Allowed {
+interface Allowed {
 	min?: number | undefined;
 	max?: number | undefined;
 }
 export type Specification = Partial<Record<FuelPropertyName, Allowed>>;
 
 /** Where a batch stands against one line of its fuel's specification. */
-export interface Outcome {
+interface Outcome {
 	property: FuelPropertyName;
 	/** `near`: inside, but by less than its own expanded uncertainty, so that it may be outside; or the other way round. */
 	verdict: 'inside' | 'near' | 'outside' | 'unknown';
@@ -30,7 +30,7 @@ export function allowedText(property: FuelPropertyName, { min, max }: Allowed): 
 
 /** Each line of a specification against what was measured of a batch, in the usual order of the properties. */
 export function againstSpecification(facts: FuelFacts, specification: Specification): Outcome[] {
-	return FUEL_PROPERTIES.flatMap((property) => {
+	return FUEL_PROPERTIES.flatMap((property): Outcome[] => {
 		const allowed = specification[property];
 		if (!allowed || (allowed.min === undefined && allowed.max === undefined)) return [];
 		const measured = facts[property];
@@ -40,7 +40,7 @@ export function againstSpecification(facts: FuelFacts, specification: Specificat
 			return [
 				{
 					property,
-					verdict: 'unknown' as const,
+					verdict: 'unknown',
 					sentence: `${label} is not recorded; the fuel asks for ${rule}.`
 				}
 			];

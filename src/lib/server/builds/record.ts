@@ -25,7 +25,9 @@ async function hoursOf(trx: Trx, runs: RawBuilder<unknown>): Promise<RunningHour
 		unknownRuns: number;
 	}>`
 		with told as (
-			select m.value as traced, greatest(extract(epoch from r.ended_at - r.started_at)::float8 / 3600, 0) as recorded
+			-- An end before its start is no time; no end at all is not known.
+			select m.value as traced, case when r.ended_at is not null
+				then extract(epoch from greatest(r.ended_at, r.started_at) - r.started_at)::float8 / 3600 end as recorded
 			from run r
 			left join metric m on m.run_id = r.id and m.is_current and m.code = 'engine_hours'
 			where ${runs}

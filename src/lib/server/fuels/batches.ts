@@ -207,7 +207,7 @@ export async function checkFuelBatch(
 				.executeTakeFirstOrThrow();
 			return {
 				facts: row.properties as FuelFacts,
-				specification: row.specification as Specification,
+				specification: row.specification as unknown as Specification,
 				client: row.client
 			};
 		}),

@@ -15,7 +15,7 @@ type Row = Awaited<ReturnType<ReturnType<typeof selectFuels>['executeTakeFirstOr
 const toFuel = (row: Row): Fuel => ({
 	...row,
 	components: row.components as Fuel['components'],
-	specification: row.specification as Fuel['specification']
+	specification: row.specification as unknown as Fuel['specification']
 });
 const readFuel = async (trx: Trx, id: string): Promise<Fuel> =>
 	toFuel(await selectFuels(trx).where('id', '=', id).executeTakeFirstOrThrow());

@@ -20,5 +20,6 @@ export {
 	FuelChange,
 	FuelView,
 	NewFuel,
-	NewFuelBatch
+	NewFuelBatch,
+	type Fuel
 } from './schemas';

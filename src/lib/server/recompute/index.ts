@@ -13,7 +13,7 @@ export const BehindView = z.object({
 export type Behind = z.input<typeof BehindView>;
 
 /** What figures depend on; each keeps its versions. */
-export type Source = { engine: string } | { fuelBatch: string };
+type Source = { engine: string } | { fuelBatch: string };
 
 interface Row {
 	traceId: string;

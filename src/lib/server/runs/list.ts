@@ -101,6 +101,12 @@ export async function listRuns(
 			all = all.where('r.buildId', '=', (await resolve(trx, 'build', query.build, { field: 'build' })).id);
 		if (query.cell)
 			all = all.where('r.cellId', '=', (await resolve(trx, 'cell', query.cell, { field: 'cell' })).id);
+		if (query.fuelBatch)
+			all = all.where(
+				'r.fuelBatchId',
+				'=',
+				(await resolve(trx, 'fuel_batch', query.fuelBatch, { field: 'fuelBatch' })).id
+			);
 		if (query.state) all = all.where('r.state', '=', query.state);
 		if (query.flagged !== undefined)
 			all = all.where((eb) => {
