@@ -23,6 +23,7 @@ export const load: LayoutServerLoad = async ({ locals, cookies }) => {
 		cellColours(deps, who)
 	]);
 	return {
+		units: who.units,
 		person: { name: who.name, role: who.role, client },
 		theme,
 		rail,

@@ -135,6 +135,9 @@ const LAB_OWNED = new Set(['cells', 'closures', 'fuels']);
 /** Their bodies speak of the one who asks, and name nothing that could be another's. */
 const OF_ONESELF = new Set(['changeMe', 'changePassword']);
 
+/** Their bodies speak of the one who asks, and name nothing that could be another's. */
+const OF_ONESELF = new Set(['changeMe', 'changePassword']);
+
 const fill = (path: string, id: string, part: string) =>
 	path.replace('{id}', id).replace(/\{(trace|attachment)Id\}/, part);
 /** What stands under a thing in a path: one of its attachments, else its trace. */

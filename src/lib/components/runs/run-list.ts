@@ -1,4 +1,6 @@
+import { shownLabel } from '$lib/domain/display/figure';
 import { labelOf } from '$lib/domain/display/labels';
+import type { UnitSystem } from '$lib/domain/display/unit-system';
 import type { Column } from '../table/columns';
 
 /** Heads that are shorter in a column than the figure's own name. */
@@ -10,9 +12,13 @@ const SHORT: Readonly<Record<string, string>> = {
 };
 
 /** Columns of the run list, the chosen figures among them. */
-export function listColumns(metrics: readonly string[], isStaff: boolean): Column[] {
+export function listColumns(
+	metrics: readonly string[],
+	isStaff: boolean,
+	units: UnitSystem = 'si'
+): Column[] {
 	const figures = metrics.map((code) => {
-		const { label, unit } = labelOf(code);
+		const { label, unit } = shownLabel(code, undefined, units);
 		return { key: code, head: SHORT[code] ?? label, unit, numeric: true, sort: code };
 	});
 	return [
