@@ -19,6 +19,7 @@ export async function callApi(path: string, call: Call = {}): Promise<Response> 
 	const { method = 'GET', body, query = {}, ifMatch, signal, fetch: ask = fetch } = call;
 	const { accept = 'application/json' } = call;
 	const headers: Record<string, string> = { accept };
+	if (call.ifMatch !== undefined) headers['if-match'] = `"${call.ifMatch}"`;
 	if (body !== undefined) headers['content-type'] = 'application/json';
 	if (ifMatch !== undefined) headers['if-match'] = `"${ifMatch}"`;
 	const response = await ask(`/api/v1${path}${queryText(query)}`, {
