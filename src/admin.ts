@@ -3,11 +3,13 @@ import { ROLES, type Role } from './lib/server/access';
 import { addPerson, createTokenFor } from './lib/server/auth';
 import { readConfig } from './lib/server/config';
 import { closeDeps, openDeps } from './lib/server/deps';
+import { inviteFromCommandLine } from './lib/server/people';
 import { Problem } from './lib/server/problem';
 import { recomputeAll } from './lib/server/traces';
 
 const USAGE = `Usage:
   npm run admin -- user add --email E --name N --role R [--client CODE]   password: from TRUNNION_PASSWORD, or asked for on standard input
+  npm run admin -- user add … --invite                                    no password: a mail invites the person to choose one
   npm run admin -- token add --email E --label L                          prints the token alone
   npm run admin -- recompute                                              makes every run's figures again from its original
 Roles: ${ROLES.join(', ')}.`;
@@ -27,7 +29,8 @@ const { values, positionals } = parseArgs({
 		name: { type: 'string' },
 		role: { type: 'string' },
 		client: { type: 'string' },
-		label: { type: 'string' }
+		label: { type: 'string' },
+		invite: { type: 'boolean', default: false }
 	}
 });
 
@@ -36,13 +39,13 @@ try {
 	switch (positionals.join(' ')) {
 		case 'user add': {
 			if (!values.email || !values.name || !ROLES.includes(values.role as Role)) throw new Error(USAGE);
-			const person = {
-				email: values.email,
-				name: values.name,
-				role: values.role as Role,
-				clientCode: values.client
-			};
-			await addPerson(deps, { ...person, password: await readPassword() });
+			const person = { email: values.email, name: values.name, role: values.role as Role };
+			if (values.invite) {
+				await inviteFromCommandLine(deps, { ...person, client: values.client });
+				console.log(`A mail to ${values.email} is on its way; it lets them choose a password.`);
+				break;
+			}
+			await addPerson(deps, { ...person, clientCode: values.client, password: await readPassword() });
 			console.log(`${values.email} may sign in as ${values.role}.`);
 			break;
 		}

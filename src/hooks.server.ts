@@ -8,7 +8,7 @@ import { closeDeps, openDeps, type Deps } from '$lib/server/deps';
 import { problemOf } from '$lib/server/db';
 import { closeEvents } from '$lib/server/events';
 import { Problem } from '$lib/server/problem';
-import { SESSION_COOKIE, isOpenRoute, loopbackDetour, perPrincipal } from '$lib/server/web';
+import { SESSION_COOKIE, isOpenRoute, isSecretRoute, loopbackDetour, perPrincipal } from '$lib/server/web';
 
 let deps: Deps;
 
@@ -82,6 +82,8 @@ async function gate(event: RequestEvent): Promise<Response | null> {
 function isForeign(event: RequestEvent): boolean {
 	const site = event.request.headers.get('sec-fetch-site');
 	const origin = event.request.headers.get('origin');
+	// A page that sends no Referer makes its own forms say `null`; what the browser says of the site is then what counts.
+	if (origin === 'null' && site === 'same-origin') return false;
 	if (origin !== null && origin !== event.url.origin) return true;
 	if (site !== null && site !== 'same-origin') return true;
 	if (site !== null || origin !== null) return false;
@@ -93,7 +95,7 @@ function secured(event: RequestEvent, response: Response): Response {
 	const headers = response.headers;
 	headers.set('x-request-id', event.locals.requestId);
 	headers.set('x-content-type-options', 'nosniff');
-	headers.set('referrer-policy', 'same-origin');
+	headers.set('referrer-policy', isSecretRoute(event.route.id) ? 'no-referrer' : 'same-origin');
 	headers.set('x-frame-options', 'DENY');
 	headers.set('cross-origin-opener-policy', 'same-origin');
 	headers.set('cross-origin-resource-policy', 'same-origin');
@@ -108,8 +110,8 @@ function secured(event: RequestEvent, response: Response): Response {
 export const handleError: HandleServerError = ({ error, event, status, message }) => {
 	const problem = problemOf(error);
 	if (problem) return { message: problem.message, requestId: event.locals.requestId };
-	if (status !== 404)
-		log.error({ err: error, requestId: event.locals.requestId, path: event.url.pathname }, 'request failed');
+	const path = isSecretRoute(event.route.id) ? event.route.id : event.url.pathname;
+	if (status !== 404) log.error({ err: error, requestId: event.locals.requestId, path }, 'request failed');
 	return {
 		message: status === 404 ? 'There is nothing at this address.' : message,
 		requestId: event.locals.requestId

@@ -100,6 +100,8 @@ export function useBookingLab(extra: () => Record<string, string> = () => ({})) 
 			.values({ email, displayName: name, role, clientId })
 			.returning('id')
 			.executeTakeFirstOrThrow();
+		// Who has chosen a password gets mail; nobody signs in with this one.
+		await lab.deps.pools.auth.insertInto('auth.password').values({ personId: id, hash: '-' }).execute();
 		const who: Principal = {
 			personId: id,
 			name,

@@ -39,9 +39,11 @@ export function useMailLab() {
 		lab,
 		/** Runs every job that is due, and those that they add. */
 		async work() {
-			const { 'mail.notify': notify, 'mail.send': send } = mailHandlers(lab.deps);
+			const handlers = mailHandlers(lab.deps);
+			const { 'mail.notify': notify, 'mail.account': ofAccount, 'mail.send': send } = handlers;
 			const taskList: TaskList = {
 				'mail.notify': (payload) => notify(JOBS['mail.notify'].payload.parse(payload)),
+				'mail.account': (payload) => ofAccount(JOBS['mail.account'].payload.parse(payload)),
 				'mail.send': (payload) => send(JOBS['mail.send'].payload.parse(payload))
 			};
 			await runOnce({ pgPool: lab.deps.pools.queuePool, taskList, noHandleSignals: true, logger: silent });

@@ -14,6 +14,7 @@ export const ABSENT = '99999999-9999-4999-8999-999999999999';
 /** What each kind of thing is called, by client. */
 export interface Things {
 	client: string;
+	person: string;
 	engine: string;
 	build: string;
 	batch: string;
@@ -84,7 +85,7 @@ export async function makeAccessLab(stack: Stack): Promise<AccessLab> {
 		const things = async (code: string, text: string, day: number): Promise<Things> => {
 			const client = await made(manager, '/clients', { code, name: `${text} Company` });
 			const role = code === 'AA' ? 'client' : 'rival';
-			await addPerson(deps, {
+			const person = await addPerson(deps, {
 				email: `${role}@${code.toLowerCase()}.example`,
 				name: `${text} Person`,
 				role: 'client',
@@ -160,6 +161,7 @@ export async function makeAccessLab(stack: Stack): Promise<AccessLab> {
 			await settled(call, manager, run.id);
 			return {
 				client: client.id,
+				person,
 				engine: engine.id,
 				build: build.id,
 				batch: batch.id,

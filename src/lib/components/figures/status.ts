@@ -43,6 +43,11 @@ const STATUSES = {
 		review: of('Review', 'triangle', 'attention'),
 		breach: of('Breach', 'octagon', 'limit')
 	} satisfies Record<FlagSeverity, Status>,
+	person: {
+		active: of('Active', 'tick', 'good'),
+		invited: of('Invited', 'ring', 'attention'),
+		disabled: of('Disabled', 'struck', 'muted')
+	},
 	finding: {
 		info: of('Note', 'ring', 'plain'),
 		warning: of('Look at this', 'triangle', 'attention'),

@@ -1,5 +1,7 @@
-export { addPerson, addressOf } from './people';
-export { endSession, principalOfSession } from './sessions';
+export { askForReset, changeMe, changePassword, MeChange, MeView, PasswordChange, readMe } from './account';
+export { holderOfLink, LINKS, makeLink, setPasswordByLink, voidAllLinks, type LinkKind } from './links';
+export { addPerson, addressOf, clientOfRole, insertPerson } from './people';
+export { endOwnSessions, endSession, endSessionsOf, listSessions, principalOfSession } from './sessions';
 export { isStillIn } from './still-in';
 export { signIn } from './sign-in';
 export { createToken, createTokenFor, listTokens, principalOfToken, revokeToken } from './tokens';

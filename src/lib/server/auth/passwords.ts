@@ -47,8 +47,21 @@ export async function verifyPassword(password: string, stored: string | null): P
 	return right && stored !== null;
 }
 
-export function requireGoodPassword(password: string, field: string): void {
+/** Length is what counts; only what anybody would try first is refused besides. @throws Problem 400 at the field */
+export function requireGoodPassword(
+	password: string,
+	field: string,
+	person: { email: string; name: string }
+): void {
 	if (password.length < MIN_LENGTH)
-		throw wrongField(field, `use at least ${MIN_LENGTH} characters; a sentence is fine.`);
+		throw wrongField(
+			field,
+			`use at least ${MIN_LENGTH} characters; this has ${password.length}. A short sentence of your own is easy to keep and hard to guess.`
+		);
 	if (password.length > MAX_LENGTH) throw wrongField(field, `use at most ${MAX_LENGTH} characters.`);
+	const plain = password.trim().toLowerCase();
+	const known = [person.email, person.name, person.email.split('@')[0]!].map((text) => text.toLowerCase());
+	if (known.includes(plain))
+		throw wrongField(field, 'use something else than your name or your mail address.');
+	if (new Set(plain).size < 4) throw wrongField(field, 'use more than three different characters.');
 }

@@ -1,10 +1,14 @@
+import { writingAccounts } from '../db';
 import type { Deps } from '../deps';
 import { Problem } from '../problem';
 import { verifyPassword } from './passwords';
-import { startSession } from './sessions';
-import { signInThrottle, type SignInThrottle } from './throttle';
+import { insertSession } from './sessions';
+import { countTry, forgetTries } from './throttle';
 
-const throttles = new WeakMap<Deps, SignInThrottle>();
+const refused = () => new Problem(401, 'Not signed in', 'This address and password do not go together.');
+
+/** As addresses are kept and counted. */
+export const mailAddress = (typed: string) => typed.trim().toLowerCase().slice(0, 254);
 
 /**
  * @returns the new session's token
@@ -14,19 +18,30 @@ export async function signIn(
 	deps: Deps,
 	input: { email: string; password: string; address: string; userAgent: string | null }
 ): Promise<string> {
-	let throttle = throttles.get(deps);
-	if (!throttle) throttles.set(deps, (throttle = signInThrottle(deps.pools.authPool)));
-	const email = input.email.trim().toLowerCase().slice(0, 254);
-	await throttle.count(email, input.address);
+	const email = mailAddress(input.email);
+	await countTry(deps, 'sign-in', email);
+	await countTry(deps, 'sign-in-from', input.address);
 	const row = await deps.pools.auth
 		.selectFrom('auth.person as p')
 		.innerJoin('auth.password as w', 'w.personId', 'p.id')
-		.select(['p.id', 'w.hash', 'p.disabledAt'])
+		.select(['p.id', 'p.clientId', 'w.hash', 'p.disabledAt'])
 		.where('p.email', '=', email)
 		.executeTakeFirst();
 	const right = await verifyPassword(input.password, row && !row.disabledAt ? row.hash : null);
-	if (!row || !right)
-		throw new Problem(401, 'Not signed in', 'This address and password do not go together.');
-	await throttle.clear(email);
-	return startSession(deps, row.id, input.userAgent);
+	if (!row || !right) throw refused();
+	await forgetTries(deps, 'sign-in', email);
+	return writingAccounts(deps.pools, { personId: row.id, clientId: row.clientId }, async (trx) => {
+		// Checking took a while: whoever ended all sessions meanwhile, by a new password or by disabling, must have ended this one.
+		const still = await trx
+			.selectFrom('auth.person as p')
+			.innerJoin('auth.password as w', 'w.personId', 'p.id')
+			.select('p.id')
+			.where('p.id', '=', row.id)
+			.where('p.disabledAt', 'is', null)
+			.where('w.hash', '=', row.hash)
+			.forShare()
+			.executeTakeFirst();
+		if (!still) throw refused();
+		return insertSession(trx, deps.now(), row.id, input.userAgent);
+	});
 }

@@ -46,19 +46,29 @@ export async function reading<T>(pools: Pools, who: Actor, work: (trx: Trx) => P
  * Runs `work` in one short transaction as that person; again after a deadlock or a serialization failure.
  * So `work` may run twice: no mail, no HTTP, no storage inside it; enqueue a job instead.
  */
-export async function writing<T>(pools: Pools, who: Actor, work: (trx: Trx) => Promise<T>): Promise<T> {
+export function writing<T>(pools: Pools, who: Actor, work: (trx: Trx) => Promise<T>): Promise<T> {
+	return writingAs(dbOf(pools, who), who, work);
+}
+
+/**
+ * The same as the login that alone reaches schema `auth`: for people and how they sign in. No policy narrows what it sees, so
+ * the use case itself asks who may.
+ */
+export function writingAccounts<T>(pools: Pools, who: Actor, work: (trx: Trx) => Promise<T>): Promise<T> {
+	return writingAs(pools.auth, who, work);
+}
+
+async function writingAs<T>(db: Db, who: Actor, work: (trx: Trx) => Promise<T>): Promise<T> {
 	const claim = requestKey.getStore();
 	for (let attempt = 1; ; attempt++) {
 		try {
-			return await dbOf(pools, who)
-				.transaction()
-				.execute(async (trx) => {
-					await actAs(trx, who);
-					if (claim && !claim.taken) await claimKey(trx, claim);
-					const result = await work(trx);
-					if (claim) claim.taken = true;
-					return result;
-				});
+			return await db.transaction().execute(async (trx) => {
+				await actAs(trx, who);
+				if (claim && !claim.taken) await claimKey(trx, claim);
+				const result = await work(trx);
+				if (claim) claim.taken = true;
+				return result;
+			});
 		} catch (error) {
 			const code = error instanceof pg.DatabaseError ? error.code : undefined;
 			if ((code !== SERIALIZATION_FAILURE && code !== DEADLOCK) || attempt === TRIES) throw error;

@@ -1,4 +1,4 @@
-export { lockNames, reading, requestKey, SYSTEM, writing, type Actor } from './as-person';
+export { lockNames, reading, requestKey, SYSTEM, writing, writingAccounts, type Actor } from './as-person';
 export { recordAudit } from './audit';
 export { isViolation, problemOf } from './errors';
 export { rememberAnswer, rememberedAnswer, type KeyClaim } from './idempotency';

@@ -58,9 +58,11 @@ export interface AuthInvitation {
   createdAt: Generated<Timestamp>;
   expiresAt: Timestamp;
   id: Generated<string>;
+  mailId: string;
   personId: string;
   secretSha256: Buffer;
   usedAt: Timestamp | null;
+  voidedAt: Timestamp | null;
 }
 
 export interface AuthPassword {
@@ -78,21 +80,25 @@ export interface AuthPerson {
   id: Generated<string>;
   role: string;
   units: Generated<string>;
+  version: Generated<number>;
 }
 
 export interface AuthReset {
   createdAt: Generated<Timestamp>;
   expiresAt: Timestamp;
   id: Generated<string>;
+  mailId: string;
   personId: string;
   secretSha256: Buffer;
   usedAt: Timestamp | null;
+  voidedAt: Timestamp | null;
 }
 
 export interface AuthSession {
   createdAt: Generated<Timestamp>;
   expiresAt: Timestamp;
   id: string;
+  seenAt: Generated<Timestamp>;
   userAgent: string | null;
   userId: string;
 }

@@ -30,6 +30,19 @@ export const JOBS = {
 		}),
 		attempts: 10
 	},
+	/** About a person's own account. The secret of a link is made when the mail leaves, and is never here. */
+	'mail.account': {
+		payload: z.object({
+			event: z.enum(['person.invited', 'person.reset', 'person.password_changed']),
+			personId: z.uuid(),
+			clientId: z.uuid().nullable(),
+			/** Each asking is an occasion of its own, and makes one mail however often the job runs. */
+			occasionId: z.uuid(),
+			/** Who invites. */
+			byId: z.uuid().nullable()
+		}),
+		attempts: 10
+	},
 	'mail.send': { payload: z.object({ clientId: z.uuid().nullable(), mailId: z.uuid() }), attempts: 14 }
 } as const;
 

@@ -1,6 +1,6 @@
 import type { Deps } from '../deps';
 import type { JobData } from '../jobs';
-import { notify } from './notify';
+import { notify, notifyOfAccount } from './notify';
 import { sendMail } from './send';
 
 export { closeMail } from './transport';
@@ -9,6 +9,7 @@ export { closeMail } from './transport';
 export function mailHandlers(deps: Deps) {
 	return {
 		'mail.notify': (data: JobData<'mail.notify'>) => notify(deps, data),
+		'mail.account': (data: JobData<'mail.account'>) => notifyOfAccount(deps, data),
 		'mail.send': (data: JobData<'mail.send'>) => sendMail(deps, data)
 	};
 }

@@ -10,8 +10,15 @@ export interface Outgoing {
 	calendar?: { facts: CalendarFacts; method: CalendarMethod };
 }
 
+interface Occasion {
+	event: JobData<'mail.notify' | 'mail.account'>['event'];
+	clientId: string | null;
+	subjectId: string;
+	revision: number;
+}
+
 /** Writes the mails and, in the same transaction, their sending. Run again it adds nothing: a mail is one per event and person. */
-export async function promise(trx: Trx, event: JobData<'mail.notify'>, list: Outgoing[]): Promise<void> {
+export async function promise(trx: Trx, event: Occasion, list: Outgoing[]): Promise<void> {
 	for (const { recipientId, letter, calendar } of list) {
 		const row = await trx
 			.insertInto('mail')

@@ -1,5 +1,5 @@
 import { may, type Role } from '../access';
-import { addressOf } from '../auth';
+import { addressOf, makeLink, type LinkKind } from '../auth';
 import { log } from '../config';
 import { reading, SYSTEM, writing } from '../db';
 import type { Deps } from '../deps';
@@ -25,8 +25,12 @@ async function mailToSend(deps: Deps, mailId: string) {
 
 type PromisedMail = NonNullable<Awaited<ReturnType<typeof mailToSend>>>;
 
+/** Mails about a person's own account say nothing of anyone else, so they need no right but to be that person. */
+const isOfAccount = (mail: PromisedMail) => mail.kind.startsWith('person.');
+
 /** Rights are asked for again when the mail leaves: between promise and sending a person may have lost them. */
 function stillEntitled(mail: PromisedMail): boolean {
+	if (isOfAccount(mail)) return true;
 	if (mail.role === 'client') return mail.clientId !== null && mail.recipientClientId === mail.clientId;
 	return mail.kind !== 'booking.requested' || may({ role: mail.role as Role }, 'booking.decide');
 }
@@ -40,6 +44,27 @@ function refusedForGood(error: unknown): number | null {
 	};
 	const isRefusal = code === 'EENVELOPE' && command === 'RCPT TO';
 	return isRefusal && responseCode && responseCode >= 550 && responseCode < 560 ? responseCode : null;
+}
+
+const LINK_OF: Readonly<Record<string, LinkKind>> = {
+	'person.invited': 'invitation',
+	'person.reset': 'reset'
+};
+
+/** Two mails with links may wait for one person: only the newest one's would work, so only that one goes. */
+async function isReplaced(deps: Deps, mail: PromisedMail): Promise<boolean> {
+	if (!LINK_OF[mail.kind]) return false;
+	return reading(deps.pools, SYSTEM, async (trx) => {
+		const newer = await trx
+			.selectFrom('mail')
+			.select('id')
+			.where('recipientId', '=', mail.recipientId)
+			.where('kind', '=', mail.kind)
+			// Compared in the database: a Date has lost the microseconds.
+			.where('createdAt', '>', (eb) => eb.selectFrom('mail').select('createdAt').where('id', '=', mail.id))
+			.executeTakeFirst();
+		return newer !== undefined;
+	});
 }
 
 async function settle(deps: Deps, mailId: string, droppedReason: string | null): Promise<void> {
@@ -66,10 +91,17 @@ export async function sendMail(deps: Deps, { mailId }: JobData<'mail.send'>): Pr
 	if (!stillEntitled(mail)) return settle(deps, mailId, 'The person may no longer read what this mail says.');
 	const to = await addressOf(deps, mail.recipientId);
 	if (!to) return settle(deps, mailId, 'The person’s account is disabled.');
+	// Until they have chosen a password nobody knows that this mailbox is theirs.
+	if (!to.isIn && !isOfAccount(mail))
+		return settle(deps, mailId, 'The person has not accepted the invitation yet.');
+	if (await isReplaced(deps, mail))
+		return settle(deps, mailId, 'A newer mail with a link replaces this one.');
 	if (!isOneLine(to.email) || !isOneLine(mail.subject))
 		return settle(deps, mailId, 'The address or the subject has a character that no header may have.');
 	try {
-		await transportOf(deps).sendMail(messageOf(deps, mail, to));
+		const kind = LINK_OF[mail.kind];
+		const link = kind ? await makeLink(deps, kind, mail.recipientId, mail.id) : null;
+		await transportOf(deps).sendMail(messageOf(deps, mail, to, link));
 	} catch (error) {
 		const refused = refusedForGood(error);
 		if (refused) return settle(deps, mailId, `The mail server refused the address (${refused}).`);
@@ -82,11 +114,12 @@ export async function sendMail(deps: Deps, { mailId }: JobData<'mail.send'>): Pr
 	await settle(deps, mailId, null);
 }
 
-function messageOf(deps: Deps, mail: PromisedMail, to: { email: string; name: string }) {
+function messageOf(deps: Deps, mail: PromisedMail, to: { email: string; name: string }, link: string | null) {
 	const { config } = deps;
 	const sender = senderOf(config);
 	const host = new URL(config.origin).hostname;
 	const method = mail.calendarMethod as CalendarMethod | null;
+	const body = link ? `${mail.body}\n\n${link}` : mail.body;
 	const toName = isOneLine(to.name) ? to.name : '';
 	return {
 		from: sender,
@@ -96,8 +129,8 @@ function messageOf(deps: Deps, mail: PromisedMail, to: { email: string; name: st
 		messageId: `<mail-${mail.id}@${host}>`,
 		date: mail.createdAt,
 		subject: mail.subject,
-		text: mail.body,
-		html: htmlOf(mail.body, config.origin),
+		text: body,
+		html: htmlOf(body, config.origin),
 		headers: { 'Auto-Submitted': 'auto-generated' },
 		...(mail.calendar && method
 			? {

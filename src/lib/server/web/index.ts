@@ -1,18 +1,23 @@
 import { error, type RequestEvent } from '@sveltejs/kit';
 import { RateLimiterMemory } from 'rate-limiter-flexible';
 import { requireMay, type Action, type Principal } from '../access';
-import type { Config } from '../config';
 import { problemOf } from '../db';
 import { Problem } from '../problem';
 
-export const SESSION_COOKIE = 'session';
+/** Their address is itself a secret: it goes into no log and into no Referer. */
+const SECRET_ROUTES = new Set(['/invitation/[token]', '/reset/[token]']);
+const OPEN_ROUTES = new Set([
+	'/sign-in',
+	'/forgotten',
+	...SECRET_ROUTES,
+	'/api/v1/health',
+	'/api/v1/openapi.json',
+	'/readyz',
+	'/theme'
+]);
 
-/** Strict enough for a browser on plain loopback too: `Secure` as soon as the site is served by https. */
-export function sessionCookie(config: Config) {
-	return { path: '/', httpOnly: true, sameSite: 'lax', secure: config.origin.startsWith('https:') } as const;
-}
-
-const OPEN_ROUTES = new Set(['/sign-in', '/api/v1/health', '/api/v1/openapi.json', '/readyz', '/theme']);
+export const isSecretRoute = (routeId: string | null): boolean =>
+	routeId !== null && SECRET_ROUTES.has(routeId);
 
 /** Routes that answer before anyone is known. */
 export function isOpenRoute(routeId: string | null, pathname: string): boolean {
@@ -61,4 +66,6 @@ export async function pageData<T>(event: Pick<RequestEvent, 'locals'>, work: () 
 }
 export { refused } from './forms';
 export { labInstant } from './clock';
+export { linkPage } from './link-page';
 export { loopbackDetour } from './loopback';
+export { SESSION_COOKIE, sessionCookie } from './session-cookie';

@@ -1,0 +1,23 @@
+import { describe, expect, it } from 'vitest';
+import { browserName } from './browser-name';
+
+describe('a session’s browser', () => {
+	it.each([
+		['Mozilla/5.0 (X11; Linux x86_64; rv:128.0) Gecko/20100101 Firefox/128.0', 'Firefox on Linux'],
+		[
+			'Mozilla/5.0 (Windows NT 10.0; Win64; x64) AppleWebKit/537.36 (KHTML, like Gecko) Chrome/126.0 Safari/537.36 Edg/126.0',
+			'Edge on Windows'
+		],
+		[
+			'Mozilla/5.0 (Linux; Android 14) AppleWebKit/537.36 (KHTML, like Gecko) Chrome/126.0 Mobile Safari/537.36',
+			'Chrome on Android'
+		],
+		[
+			'Mozilla/5.0 (iPad; CPU OS 17_5 like Mac OS X) AppleWebKit/605.1.15 (KHTML, like Gecko) Version/17.5 Mobile/15E148 Safari/604.1',
+			'Safari on iOS'
+		],
+		['curl/8.9.1', 'curl'],
+		['something else', 'Unknown browser'],
+		[null, 'Unknown browser']
+	])('%s', (userAgent, name) => expect(browserName(userAgent)).toBe(name));
+});
