@@ -13,6 +13,10 @@ declare global {
 		interface Platform {
 			req?: IncomingMessage;
 		}
+		interface PageData {
+			/** The units in which this reader is shown figures. */
+			units?: 'si' | 'us';
+		}
 		interface Locals {
 			deps: Deps;
 			who: Principal | null;

@@ -18,6 +18,7 @@ export const load: LayoutServerLoad = async ({ locals, cookies }) => {
 		};
 	const client = who.clientId ? await getClient(deps, who, who.clientId) : null;
 	return {
+		units: who.units,
 		person: { name: who.name, role: who.role, client },
 		theme,
 		rail,

@@ -1,6 +1,7 @@
 import type { MetricValue } from '../model';
 import { formatNumber, formatWithUncertainty, NONE } from './format';
-import { labelOf } from './labels';
+import { labelOf, type Label } from './labels';
+import { shownAs, type UnitSystem } from './unit-system';
 
 /** Coverage factor where no degrees of freedom are known: about 95 % for a normal distribution (JCGM 100:2008, 6.3.3). */
 export const COVERAGE = 2;
@@ -19,34 +20,57 @@ export interface FigureText {
 }
 
 /** A metric ready to print. `u` of 0 or null shows the metric's usual decimals and no ±. */
-export function figureText(code: string, metric: MetricValue | null): FigureText {
-	const { label, unit, decimals, percent } = labelOf(code, metric?.unit);
+export function figureText(code: string, metric: MetricValue | null, system: UnitSystem = 'si'): FigureText {
+	const { label, unit, decimals, percent, as } = shownLabel(code, metric?.unit, system);
 	if (!metric) return { label, value: NONE, plusMinus: null, unit, at: null, outside: null };
 	const scale = percent ? 100 : 1;
-	const expanded = metric.u === null ? 0 : metric.u * COVERAGE * scale;
+	const value = as.value(metric.value) * scale;
+	const expanded = metric.u === null ? 0 : as.difference(metric.u) * COVERAGE * scale;
 	// What arithmetic alone leaves over is no uncertainty.
-	const known = expanded > Math.abs(metric.value * scale) * 1e-9 && Number.isFinite(metric.value);
+	const known = expanded > Math.abs(value) * 1e-9 && Number.isFinite(metric.value);
 	const shown = known
-		? formatWithUncertainty(metric.value * scale, expanded)
-		: { value: formatNumber(metric.value * scale, decimals), plusMinus: null };
-	return { label, ...shown, unit, at: placeText(code, metric.at), outside: metric.outsideRange ?? null };
+		? formatWithUncertainty(value, expanded)
+		: { value: formatNumber(value, decimals), plusMinus: null };
+	const at = placeText(code, metric.at, system);
+	return { label, ...shown, unit, at, outside: metric.outsideRange ?? null };
+}
+
+/** The label of a quantity as this reader sees it: unit and decimals in their own custom. */
+export function shownLabel(
+	code: string,
+	unit: string | undefined,
+	system: UnitSystem
+): Label & { as: ReturnType<typeof shownAs> } {
+	const label = labelOf(code, unit);
+	const as = shownAs(system, code, label.unit);
+	return { ...label, unit: as.unit, decimals: label.decimals + as.moreDecimals, as };
 }
 
 /** One value of a channel or a metric, unit apart: for table cells and readouts. */
-export function valueText(code: string, value: number | null | undefined): string {
-	const { decimals, percent } = labelOf(code);
-	return formatNumber(value == null ? value : value * (percent ? 100 : 1), decimals);
+export function valueText(
+	code: string,
+	value: number | null | undefined,
+	system: UnitSystem = 'si',
+	unit?: string
+): string {
+	const { decimals, percent, as } = shownLabel(code, unit, system);
+	return formatNumber(value == null ? value : as.value(value) * (percent ? 100 : 1), decimals);
 }
 
 /** A value with its unit in one line of text: for a sentence, a title, a screen reader. */
-export function valueWithUnit(code: string, value: number | null | undefined): string {
-	const { unit } = labelOf(code);
-	return `${valueText(code, value)}${unit ? `\u00A0${unit}` : ''}`;
+export function valueWithUnit(
+	code: string,
+	value: number | null | undefined,
+	system: UnitSystem = 'si'
+): string {
+	const { unit } = shownLabel(code, undefined, system);
+	return `${valueText(code, value, system)}${unit ? `\u00A0${unit}` : ''}`;
 }
 
-function placeText(code: string, at: MetricValue['at']): string | null {
-	if (at?.speed !== undefined && !code.endsWith('_speed')) return `at ${valueWithUnit('speed', at.speed)}`;
-	if (at?.torque !== undefined) return `at ${valueWithUnit('torque', at.torque)}`;
-	if (at?.time !== undefined) return `at ${valueWithUnit('time', at.time)}`;
+function placeText(code: string, at: MetricValue['at'], system: UnitSystem): string | null {
+	if (at?.speed !== undefined && !code.endsWith('_speed'))
+		return `at ${valueWithUnit('speed', at.speed, system)}`;
+	if (at?.torque !== undefined) return `at ${valueWithUnit('torque', at.torque, system)}`;
+	if (at?.time !== undefined) return `at ${valueWithUnit('time', at.time, system)}`;
 	return null;
 }
