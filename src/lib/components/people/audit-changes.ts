@@ -1,5 +1,5 @@
 /** One field of an audit line: what it was, and what it became. */
-export interface FieldChange {
+interface FieldChange {
 	field: string;
 	/** Null where there is no before (or no after): then only the other is told. */
 	before: string | null;

@@ -32,7 +32,7 @@ const US: Readonly<Record<string, Custom>> = {
 /** A barometer is read in inches of mercury (conventional, 13 595.1 kg/m³). */
 const BAROMETER: Custom = { unit: 'inHg', size: 3.386_388_640_341, moreDecimals: 1 };
 
-export interface Shown {
+interface Shown {
 	unit: string;
 	value(internal: number): number;
 	/** A difference, a scatter or an uncertainty: scaled, and never moved to another zero. */

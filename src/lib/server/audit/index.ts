@@ -44,7 +44,6 @@ export const AuditEntry = z.object({
 	before: z.unknown(),
 	after: z.unknown()
 });
-export type Audit = z.output<typeof AuditEntry>;
 
 /** A name for each subject on the page: one question for each kind. */
 async function namesOf(trx: Trx, rows: { subject: string; subjectId: string | null }[]) {

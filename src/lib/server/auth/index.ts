@@ -1,5 +1,5 @@
 export { askForReset, changeMe, changePassword, MeChange, MeView, PasswordChange, readMe } from './account';
-export { holderOfLink, LINKS, makeLink, setPasswordByLink, voidAllLinks, type LinkKind } from './links';
+export { holderOfLink, makeLink, setPasswordByLink, voidAllLinks, type LinkKind } from './links';
 export { addPerson, addressOf, clientOfRole, insertPerson } from './people';
 export { endOwnSessions, endSession, endSessionsOf, listSessions, principalOfSession } from './sessions';
 export { isStillIn } from './still-in';

@@ -11,7 +11,7 @@ import { countTry, forgetTries } from './throttle';
 const MINUTE_MS = 60_000;
 
 /** The two kinds of link that let someone choose a password, and how long each works after its mail was sent. */
-export const LINKS = {
+const LINKS = {
 	invitation: { table: 'auth.invitation', lastsMs: 7 * 24 * 60 * MINUTE_MS },
 	reset: { table: 'auth.reset', lastsMs: 60 * MINUTE_MS }
 } as const;

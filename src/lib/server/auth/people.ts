@@ -4,7 +4,7 @@ import type { Deps } from '../deps';
 import { badRequest, wrongField } from '../problem';
 import { hashPassword, requireGoodPassword } from './passwords';
 
-export interface NewAccount {
+interface NewAccount {
 	email: string;
 	name: string;
 	role: Role;

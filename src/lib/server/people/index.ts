@@ -1,4 +1,4 @@
 export { changePerson, disablePerson, enablePerson, endSessions } from './change';
 export { inviteAgain, inviteFromCommandLine, invitePerson } from './invite';
 export { getPerson, listPeople } from './read';
-export { NewPerson, PersonChange, PersonDisable, PersonQuery, PersonView, PERSON_STATES } from './schemas';
+export { NewPerson, PersonChange, PersonDisable, PersonQuery, PersonView } from './schemas';

@@ -3,7 +3,7 @@ import { ROLES } from '../access';
 import { fields, PageQuery } from '../api';
 
 const role = z.enum(ROLES, { error: `choose one of ${ROLES.join(', ')}` });
-export const PERSON_STATES = ['active', 'invited', 'disabled'] as const;
+const PERSON_STATES = ['active', 'invited', 'disabled'] as const;
 export const PERSON_SORTS = ['name', 'email', 'role', 'created'] as const;
 
 export const NewPerson = z.object({
