@@ -28,7 +28,7 @@ async function openRecord(page: Page): Promise<string> {
 
 const section = (page: Page, heading: string) => page.getByRole('region', { name: heading, exact: true });
 const uploadTo = (page: Page, files: Parameters<Page['setInputFiles']>[1]) =>
-	page.getByLabel('Choose files').setInputFiles(files);
+	section(page, 'Traces').getByLabel('Choose files').setInputFiles(files);
 /** The large number under a figure's name. */
 const figure = (page: Page, name: string) =>
 	page
@@ -145,7 +145,7 @@ describe('a run from its record to its acceptance', () => {
 		await engineer.getByRole('dialog').getByLabel('Remark').fill('Smell was the new exhaust wrap.');
 		await engineer.getByRole('dialog').getByRole('button', { name: 'Accept run' }).click();
 		await engineer.getByText(/^Accepted by Sam engineer/).waitFor();
-		expect(await engineer.getByLabel('Choose files').count()).toBe(0);
+		expect(await section(engineer, 'Traces').getByLabel('Choose files').count()).toBe(0);
 		await section(engineer, 'History').getByText('accepted the run').waitFor();
 		await engineer.context().close();
 	});

@@ -117,11 +117,25 @@ export interface Rule {
 	mergeGapS?: number | undefined;
 }
 
+/** What an engine may drive besides the absorber; declared with a run's figures. */
+export const AUXILIARIES = [
+	'fan',
+	'water_pump',
+	'oil_pump',
+	'fuel_pump',
+	'alternator',
+	'steering_pump',
+	'air_conditioning',
+	'air_filter',
+	'exhaust_system'
+] as const;
+export type Auxiliary = (typeof AUXILIARIES)[number];
+
 export interface Flag {
 	rule: string;
 	severity: FlagSeverity;
 	spans: Span[];
-	worst: { value: number; limit: number; at: number | null; ratio: number | null };
+	worst: { value: number; limit: number; unit: string; at: number | null; ratio: number | null };
 	/** How long in all, s (0 for metrics and fuel properties). */
 	totalS: number;
 	message: string;

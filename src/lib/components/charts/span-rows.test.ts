@@ -2,7 +2,7 @@ import { expect, it } from 'vitest';
 import type { Finding, Flag } from '$lib/domain/model';
 import { shadesOf, spanRows } from './span-rows';
 
-const WORST = { value: 172.1, limit: 167.1, at: 13.2, ratio: 1.03 };
+const WORST = { value: 172.1, unit: 'N·m', limit: 167.1, at: 13.2, ratio: 1.03 };
 const flag = (rule: string, severity: Flag['severity'], spans: Flag['spans']): Flag => ({
 	rule,
 	severity,

@@ -1,5 +1,6 @@
 import type {
 	Ambient,
+	Auxiliary,
 	ChannelInfo,
 	Correction,
 	Finding,
@@ -17,6 +18,8 @@ export interface RunTraceFile {
 	state: 'received' | 'processing' | 'needs_map' | 'ready' | 'refused';
 	filename: string;
 	primary: boolean;
+	/** How long after the run's start its clock reads zero, s. */
+	timeOffsetS: number;
 	sizeBytes: number;
 	rows: number | null;
 	sampleRateHz: number | null;
@@ -29,9 +32,12 @@ export interface RunTraceFile {
 /** By a rule, or by hand: then there is no worst value. */
 export interface RunFlag extends Pick<Flag, 'rule' | 'severity' | 'spans' | 'message'> {
 	id: string;
-	worst: Flag['worst'] | null;
+	/** Figures kept before units were name none. */
+	worst: (Omit<Flag['worst'], 'unit'> & { unit?: string | undefined }) | null;
 	totalS: number | null;
 	raisedBy: string | null;
+	/** The one that its spans are of; null by hand. */
+	trace: { id: string; filename: string } | null;
 }
 
 /** What the parts of a run's page read of its record. */
@@ -40,6 +46,7 @@ export interface RunRecord {
 	number: string;
 	client: string;
 	build: string;
+	buildId: string;
 	buildTitle: string;
 	engine: string;
 	cell: string;
@@ -53,6 +60,11 @@ export interface RunRecord {
 	limitSet: string | null;
 	correction: Correction;
 	net: boolean | null;
+	auxiliaries: Auxiliary[];
+	inletDepressionKpa: number | null;
+	exhaustBackPressureKpa: number | null;
+	stillNeeded: string[];
+	version: number;
 	ambient: Ambient;
 	reviewedBy: string | null;
 	reviewedAt: Instant | null;
@@ -84,4 +96,27 @@ export interface Answered {
 	id: string;
 	data: Record<string, unknown>;
 	errors: Record<string, string[] | undefined> & { _errors?: string[] };
+}
+
+export type CheckAnswer = 'done' | 'not_applicable' | 'not_done';
+interface Check {
+	answer: CheckAnswer;
+	reason: string | null;
+	by: string;
+	at: Instant;
+}
+export interface ChecklistRecord {
+	version: number;
+	items: { item: string; text: string; look: string; holds: Check | null; before: Check[] }[];
+}
+
+export interface AirReading {
+	id: string;
+	at: Instant;
+	barometerKpa: number | null;
+	temperatureC: number | null;
+	humidityPct: number | null;
+	author: string;
+	supersedes: string | null;
+	reason: string | null;
 }

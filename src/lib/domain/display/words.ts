@@ -1,4 +1,4 @@
-import type { Correction, Ignition, Induction, RunKind } from '../model';
+import type { Auxiliary, Correction, Ignition, Induction, RunKind } from '../model';
 
 /** Kinds as people say them. */
 export const RUN_KIND_WORDS: Readonly<Record<RunKind, string>> = {
@@ -28,6 +28,18 @@ export const INDUCTION_WORDS: Readonly<Record<Induction, string>> = {
 export const IGNITION_WORDS: Readonly<Record<Ignition, string>> = {
 	spark: 'Spark ignition',
 	compression: 'Compression ignition'
+};
+
+export const AUXILIARY_WORDS: Readonly<Record<Auxiliary, string>> = {
+	fan: 'Fan',
+	water_pump: 'Water pump',
+	oil_pump: 'Oil pump',
+	fuel_pump: 'Fuel pump',
+	alternator: 'Alternator',
+	steering_pump: 'Steering pump',
+	air_conditioning: 'Air conditioning',
+	air_filter: 'Air filter and intake',
+	exhaust_system: 'Exhaust system'
 };
 
 /** Choices of a select, in the order of their words' table. */

@@ -70,7 +70,7 @@ describe('rules over samples', () => {
 			rule: 'Torque limit',
 			severity: 'review',
 			spans: [[2, 3]],
-			worst: { value: 180, limit: 150, at: 2, ratio: 1.2 }
+			worst: { value: 180, limit: 150, unit: 'N·m', at: 2, ratio: 1.2 }
 		});
 		expect(flag!.totalS).toBeCloseTo(1, 9);
 		expect(flag!.message).toBe(

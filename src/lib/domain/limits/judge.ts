@@ -168,7 +168,13 @@ function judgeTrace(rule: Rule, trace: Trace): Flag | null | { reason: string } 
 		rule: rule.title,
 		severity: rule.severity,
 		spans: trace.time ? spans : [],
-		worst: { value: worst!.value, limit: worst!.limit, at: when, ratio: ratioOf(worst!.value, worst!.limit) },
+		worst: {
+			value: worst!.value,
+			limit: worst!.limit,
+			unit: subject.unit,
+			at: when,
+			ratio: ratioOf(worst!.value, worst!.limit)
+		},
 		totalS: total,
 		message: sentence(rule, subject.name, subject.unit, worst!, spans.length, trace.time ? total : null, when)
 	};
@@ -194,7 +200,7 @@ function judgeValue(
 		rule: rule.title,
 		severity: rule.severity,
 		spans: [],
-		worst: { value, limit: outside.limit, at, ratio: ratioOf(value, outside.limit) },
+		worst: { value, limit: outside.limit, unit, at, ratio: ratioOf(value, outside.limit) },
 		totalS: 0,
 		message: sentence(rule, name, unit, worst, 0, null, at)
 	};

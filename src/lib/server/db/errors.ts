@@ -12,7 +12,8 @@ const UNIQUE: Record<string, [field: string, sentence: string]> = {
 	engine_code_unique: ['code', 'is taken by another engine of this client.'],
 	build_number_unique: ['number', 'is taken by another build of this client.'],
 	person_email_unique: ['email', 'has an account already.'],
-	log_line_superseded_once: ['supersedes', 'has been corrected already.']
+	log_line_superseded_once: ['supersedes', 'has been corrected already.'],
+	air_reading_superseded_once: ['supersedes', 'has been corrected already.']
 };
 
 export function isViolation(error: unknown, constraint: string): boolean {

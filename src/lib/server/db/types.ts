@@ -24,6 +24,20 @@ export type JsonValue = JsonArray | JsonObject | JsonPrimitive;
 
 export type Timestamp = ColumnType<Date, Date | string, Date | string>;
 
+export interface AirReading {
+  at: Timestamp;
+  author: string;
+  barometerKpa: number | null;
+  clientId: string;
+  createdAt: Generated<Timestamp>;
+  humidityPct: number | null;
+  id: Generated<string>;
+  reason: string | null;
+  runId: string;
+  supersedesId: string | null;
+  temperatureC: number | null;
+}
+
 export interface Attachment {
   addedBy: string;
   buildId: string | null;
@@ -178,6 +192,19 @@ export interface Cell {
 export interface CellFuel {
   cellId: string;
   fuelId: string;
+}
+
+export interface ChecklistEntry {
+  answer: string;
+  at: Timestamp;
+  author: string;
+  clientId: string;
+  createdAt: Generated<Timestamp>;
+  id: Generated<string>;
+  item: string;
+  listVersion: number;
+  reason: string | null;
+  runId: string;
 }
 
 export interface Client {
@@ -397,6 +424,7 @@ export interface Reduction {
 
 export interface Run {
   ambient: Generated<Json>;
+  auxiliaries: Generated<string[]>;
   bookingId: string | null;
   buildId: string;
   cellId: string;
@@ -404,8 +432,10 @@ export interface Run {
   correction: Generated<string>;
   createdAt: Generated<Timestamp>;
   endedAt: Timestamp | null;
+  exhaustBackPressureKpa: number | null;
   fuelBatchId: string;
   id: Generated<string>;
+  inletDepressionKpa: number | null;
   kind: string;
   limitSetId: string | null;
   loggedBy: string;
@@ -444,6 +474,7 @@ export interface Trace {
 }
 
 export interface DB {
+  airReading: AirReading;
   attachment: Attachment;
   audit: Audit;
   "auth.invitation": AuthInvitation;
@@ -457,6 +488,7 @@ export interface DB {
   build: Build;
   cell: Cell;
   cellFuel: CellFuel;
+  checklistEntry: ChecklistEntry;
   client: Client;
   counter: Counter;
   engine: Engine;

@@ -1,5 +1,7 @@
+export { changeRun } from './change';
 export { listRuns } from './list';
 export { openRun } from './open';
+export { proposeLimitSet } from './propose';
 export {
 	acceptRun,
 	addLogLine,
@@ -18,6 +20,7 @@ export {
 	NewRun,
 	OptionalReason,
 	Reason,
+	RunChange,
 	RunListItem,
 	RunQuery,
 	RunView,

@@ -6,62 +6,42 @@ import { page, readCursor } from '../api';
 import { reading, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { resolve } from '../refs';
+import { selectHeads } from './heads';
 import type { RunQuery, RunRow } from './schemas';
 
 /** Figures that a list shows; the rest is on the run's page. */
 const LISTED = ['peak_power', 'peak_power_corrected', 'peak_torque', 'bte_max', 'bsfc_min'];
 
 function selectRows(trx: Trx) {
-	return trx
-		.selectFrom('run as r')
-		.innerJoin('client as c', 'c.id', 'r.clientId')
-		.innerJoin('build as b', 'b.id', 'r.buildId')
-		.innerJoin('engine as e', 'e.id', 'b.engineId')
-		.innerJoin('cell', 'cell.id', 'r.cellId')
-		.innerJoin('fuelBatch as f', 'f.id', 'r.fuelBatchId')
-		.innerJoin('person as p', 'p.id', 'r.loggedBy')
-		.select((eb) => [
-			'r.id',
-			'r.number',
-			'c.code as client',
-			'b.number as build',
-			'b.title as buildTitle',
-			'e.code as engine',
-			'cell.code as cell',
-			'cell.colour as cellColour',
-			'f.code as fuelBatch',
-			'r.kind',
-			'r.state',
-			'r.startedAt',
-			'p.displayName as loggedBy',
+	return selectHeads(trx).select((eb) => [
+		eb
+			.selectFrom('flag as g')
+			.leftJoin('reduction as d', 'd.id', 'g.reductionId')
+			.whereRef('g.runId', '=', 'r.id')
+			.where((or) => or.or([or('g.reductionId', 'is', null), or('d.supersededAt', 'is', null)]))
+			.select(sql<number>`count(*)`.as('n'))
+			.as('flags'),
+		eb
+			.selectFrom('metric as m')
+			.whereRef('m.runId', '=', 'r.id')
+			.where('m.isCurrent', '=', true)
+			.where('m.code', 'in', LISTED)
+			.select(sql<Record<string, number> | null>`jsonb_object_agg(m.code, m.value)`.as('figures'))
+			.as('figures'),
+		jsonObjectFrom(
 			eb
-				.selectFrom('flag as g')
-				.leftJoin('reduction as d', 'd.id', 'g.reductionId')
-				.whereRef('g.runId', '=', 'r.id')
-				.where((or) => or.or([or('g.reductionId', 'is', null), or('d.supersededAt', 'is', null)]))
-				.select(sql<number>`count(*)`.as('n'))
-				.as('flags'),
-			eb
-				.selectFrom('metric as m')
-				.whereRef('m.runId', '=', 'r.id')
-				.where('m.isCurrent', '=', true)
-				.where('m.code', 'in', LISTED)
-				.select(sql<Record<string, number> | null>`jsonb_object_agg(m.code, m.value)`.as('figures'))
-				.as('figures'),
-			jsonObjectFrom(
-				eb
-					.selectFrom('reduction as d')
-					.innerJoin('trace as t', 't.id', 'd.traceId')
-					.whereRef('d.runId', '=', 'r.id')
-					.where('d.supersededAt', 'is', null)
-					.where('t.isPrimary', '=', true)
-					.select([
-						sql<number[] | null>`d.curve -> 'speed'`.as('speed'),
-						sql<(number | null)[] | null>`d.curve -> 'torque'`.as('torque'),
-						sql<(number | null)[] | null>`d.curve -> 'power'`.as('power')
-					])
-			).as('curve')
-		]);
+				.selectFrom('reduction as d')
+				.innerJoin('trace as t', 't.id', 'd.traceId')
+				.whereRef('d.runId', '=', 'r.id')
+				.where('d.supersededAt', 'is', null)
+				.where('t.isPrimary', '=', true)
+				.select([
+					sql<number[] | null>`d.curve -> 'speed'`.as('speed'),
+					sql<(number | null)[] | null>`d.curve -> 'torque'`.as('torque'),
+					sql<(number | null)[] | null>`d.curve -> 'power'`.as('power')
+				])
+		).as('curve')
+	]);
 }
 
 type Row = Awaited<ReturnType<ReturnType<typeof selectRows>['executeTakeFirstOrThrow']>>;

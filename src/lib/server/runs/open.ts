@@ -1,6 +1,7 @@
 import type { z } from 'zod';
+import type { Correction } from '$lib/domain/model';
 import type { Principal } from '../access';
-import { jsonb, nextNumber, recordAudit, writing } from '../db';
+import { jsonb, nextNumber, recordAudit, writing, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { wrongField } from '../problem';
 import { clientFor, resolve } from '../refs';
@@ -28,17 +29,7 @@ export async function openRun(
 		const limitSet = input.limitSet
 			? await resolve(trx, 'limit_set', input.limitSet, { field: 'limitSet', clientId })
 			: null;
-		const engine = await trx
-			.selectFrom('build as b')
-			.innerJoin('engine as e', 'e.id', 'b.engineId')
-			.select(['e.ignition'])
-			.where('b.id', '=', build.id)
-			.executeTakeFirstOrThrow();
-		if (input.correction === 'sae_j1349' && engine.ignition === 'compression')
-			throw wrongField(
-				'correction',
-				'the SAE J1349 form kept here is for spark ignition; use iso_1585 for this engine.'
-			);
+		await refuseCorrection(trx, build.id, input.correction);
 		const number = await nextNumber(trx, clientId, 'R');
 		const { id } = await trx
 			.insertInto('run')
@@ -69,4 +60,20 @@ export async function openRun(
 		});
 		return readRun(trx, id);
 	});
+}
+
+/** @throws Problem 400 for a correction whose form is not kept here for this engine */
+export async function refuseCorrection(trx: Trx, buildId: string, correction: Correction): Promise<void> {
+	if (correction !== 'sae_j1349') return;
+	const engine = await trx
+		.selectFrom('build as b')
+		.innerJoin('engine as e', 'e.id', 'b.engineId')
+		.select(['e.ignition'])
+		.where('b.id', '=', buildId)
+		.executeTakeFirstOrThrow();
+	if (engine.ignition === 'compression')
+		throw wrongField(
+			'correction',
+			'the SAE J1349 form kept here is for spark ignition; use iso_1585 for this engine.'
+		);
 }

@@ -1,41 +1,26 @@
 import { sql } from 'kysely';
 import type { Trx } from '../db';
+import { selectHeads } from './heads';
 import type { RunDetail } from './schemas';
+import { stillNeeded } from './still-needed';
 
 type TraceViewIn = RunDetail['traces'][number];
 
 function selectRun(trx: Trx, id: string) {
-	return trx
-		.selectFrom('run as r')
-		.innerJoin('client as c', 'c.id', 'r.clientId')
-		.innerJoin('build as b', 'b.id', 'r.buildId')
-		.innerJoin('engine as e', 'e.id', 'b.engineId')
-		.innerJoin('cell', 'cell.id', 'r.cellId')
-		.innerJoin('fuelBatch as f', 'f.id', 'r.fuelBatchId')
-		.innerJoin('person as p', 'p.id', 'r.loggedBy')
+	return selectHeads(trx)
 		.leftJoin('person as v', 'v.id', 'r.reviewedBy')
 		.leftJoin('booking as k', 'k.id', 'r.bookingId')
 		.leftJoin('limitSet as l', 'l.id', 'r.limitSetId')
 		.where('r.id', '=', id)
 		.select([
-			'r.id',
-			'r.number',
-			'c.code as client',
-			'b.number as build',
-			'b.title as buildTitle',
-			'e.code as engine',
-			'cell.code as cell',
-			'cell.colour as cellColour',
-			'f.code as fuelBatch',
-			'r.kind',
-			'r.state',
-			'r.startedAt',
-			'p.displayName as loggedBy',
 			'r.loggedBy as loggedById',
 			'k.number as booking',
 			'l.code as limitSet',
 			'r.correction',
 			'r.net',
+			'r.auxiliaries',
+			'r.inletDepressionKpa',
+			'r.exhaustBackPressureKpa',
 			'r.ambient',
 			'r.settings',
 			'r.endedAt',
@@ -71,6 +56,8 @@ export async function readRun(trx: Trx, id: string): Promise<RunDetail> {
 		kind: run.kind as RunDetail['kind'],
 		state: run.state as RunDetail['state'],
 		correction: run.correction as RunDetail['correction'],
+		auxiliaries: run.auxiliaries as RunDetail['auxiliaries'],
+		stillNeeded: await stillNeeded(trx, run),
 		traces,
 		metrics: Object.fromEntries(
 			metrics.map(({ code, at, ...rest }) => [code, { ...rest, at: at as Record<string, number> | null }])
@@ -103,6 +90,7 @@ async function readTraces(trx: Trx, runId: string): Promise<TraceViewIn[]> {
 		state: row.state as TraceViewIn['state'],
 		filename: row.filename,
 		primary: row.isPrimary,
+		timeOffsetS: row.timeOffsetS,
 		sizeBytes: row.sizeBytes,
 		sha256: row.sha256.toString('hex'),
 		rows: row.rowCount,
@@ -127,8 +115,11 @@ async function readFlags(trx: Trx, runId: string): Promise<RunDetail['flags']> {
 	const rows = await trx
 		.selectFrom('flag as f')
 		.leftJoin('reduction as d', 'd.id', 'f.reductionId')
+		.leftJoin('trace as t', (on) => on.onRef('t.id', '=', 'd.traceId'))
 		.leftJoin('person as p', 'p.id', 'f.raisedBy')
 		.select([
+			't.id as traceId',
+			't.filename',
 			'f.id',
 			'f.rule',
 			'f.severity',
@@ -144,8 +135,9 @@ async function readFlags(trx: Trx, runId: string): Promise<RunDetail['flags']> {
 		.orderBy('f.createdAt')
 		.orderBy('f.id')
 		.execute();
-	return rows.map((row) => ({
+	return rows.map(({ traceId, filename, ...row }) => ({
 		...row,
+		trace: traceId === null ? null : { id: traceId, filename: filename ?? '' },
 		severity: row.severity as RunDetail['flags'][number]['severity'],
 		spans: row.spans as [number, number][],
 		worst: row.worst as RunDetail['flags'][number]['worst']

@@ -1,24 +1,13 @@
 import type { z } from 'zod';
 import type { Principal } from '../access';
-import { jsonb, reading, recordAudit, writing, type Trx } from '../db';
+import { jsonb, reading, recordAudit, writing } from '../db';
 import type { Deps } from '../deps';
 import { enqueue } from '../jobs';
-import { conflict, forbidden, stale, wrongField } from '../problem';
+import { conflict, forbidden, wrongField } from '../problem';
 import { resolve } from '../refs';
+import { lockRun } from './locked';
 import { readRun } from './read';
 import type { HistoryEntry, LogLineView, NewFlag, NewLogLine, RunDetail } from './schemas';
-
-async function lockRun(trx: Trx, ref: string, ifMatch: number | null) {
-	const { id, clientId } = await resolve(trx, 'run', ref);
-	const run = await trx
-		.selectFrom('run')
-		.select(['id', 'number', 'state', 'loggedBy', 'version'])
-		.where('id', '=', id)
-		.forUpdate()
-		.executeTakeFirstOrThrow();
-	if (ifMatch !== null && ifMatch !== run.version) throw stale();
-	return { ...run, clientId: clientId! };
-}
 
 export async function getRun(deps: Deps, who: Principal, ref: string): Promise<RunDetail> {
 	return reading(deps.pools, who, async (trx) => readRun(trx, (await resolve(trx, 'run', ref)).id));

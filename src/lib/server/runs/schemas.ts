@@ -1,13 +1,7 @@
 import { z } from 'zod';
-import { CORRECTIONS, FLAG_SEVERITIES, RUN_KINDS } from '$lib/domain/model';
+import { AUXILIARIES, CORRECTIONS, FLAG_SEVERITIES, RUN_KINDS } from '$lib/domain/model';
 import { fields } from '../api';
-
-/** Wide physical bounds: they catch a wrong unit (1013 hPa for 101.3 kPa), not a hard winter. */
-const Ambient = z.object({
-	barometerKpa: z.number().min(50, 'is in kPa: 50 to 115').max(115, 'is in kPa: 50 to 115').optional(),
-	temperatureC: z.number().min(-60, 'is in °C: −60 to 70').max(70, 'is in °C: −60 to 70').optional(),
-	humidityPct: z.number().min(0, 'is in % RH: 0 to 100').max(100, 'is in % RH: 0 to 100').optional()
-});
+import { Air } from '../logbook';
 
 const share = z.number().gt(0, 'must be above 0').max(1, 'is a share, at most 1');
 const Settings = z.object({
@@ -31,9 +25,28 @@ export const NewRun = z.object({
 	limitSet: fields.ref.nullish(),
 	correction: z.enum(CORRECTIONS).default('none'),
 	net: z.boolean().nullish(),
-	ambient: Ambient.default({}),
+	ambient: Air.default({}),
 	settings: Settings.default({})
 });
+
+/** What is declared of a run: it can be changed until the run is accepted or void. What is left out stays; null: not known. */
+export const RunChange = z
+	.object({
+		correction: z.enum(CORRECTIONS),
+		net: z.boolean().nullable(),
+		auxiliaries: z
+			.array(z.enum(AUXILIARIES))
+			.transform((fitted) => AUXILIARIES.filter((each) => fitted.includes(each))),
+		inletDepressionKpa: z.number().min(0, 'is in kPa: 0 to 50').max(50, 'is in kPa: 0 to 50').nullable(),
+		exhaustBackPressureKpa: z
+			.number()
+			.min(0, 'is in kPa: 0 to 200')
+			.max(200, 'is in kPa: 0 to 200')
+			.nullable(),
+		ambient: Air,
+		limitSet: fields.ref.nullable()
+	})
+	.partial();
 
 const Span = z.tuple([z.number(), z.number()]);
 const MetricView = z.object({
@@ -49,6 +62,8 @@ const TraceView = z.object({
 	state: z.enum(['received', 'processing', 'needs_map', 'ready', 'refused']),
 	filename: z.string(),
 	primary: z.boolean(),
+	/** How long after the run's start this trace's clock reads zero, s. */
+	timeOffsetS: z.number(),
 	sizeBytes: z.number(),
 	sha256: z.string(),
 	rows: z.number().nullable(),
@@ -74,11 +89,19 @@ const FlagView = z.object({
 	severity: z.enum(FLAG_SEVERITIES),
 	spans: z.array(Span),
 	worst: z
-		.object({ value: z.number(), limit: z.number(), at: z.number().nullable(), ratio: z.number().nullable() })
+		.object({
+			value: z.number(),
+			limit: z.number(),
+			unit: fields.unitOut.optional(),
+			at: z.number().nullable(),
+			ratio: z.number().nullable()
+		})
 		.nullable(),
 	totalS: z.number().nullable(),
 	message: z.string(),
-	raisedBy: z.string().nullable()
+	raisedBy: z.string().nullable(),
+	/** The trace whose clock the spans are on; null where a flag by hand names no trace. */
+	trace: z.object({ id: z.string(), filename: z.string() }).nullable()
 });
 
 const Head = {
@@ -86,6 +109,7 @@ const Head = {
 	number: z.string(),
 	client: z.string(),
 	build: z.string(),
+	buildId: z.string(),
 	buildTitle: z.string(),
 	engine: z.string(),
 	cell: z.string(),
@@ -103,6 +127,11 @@ export const RunView = z.object({
 	limitSet: z.string().nullable(),
 	correction: z.enum(CORRECTIONS),
 	net: z.boolean().nullable(),
+	auxiliaries: z.array(z.enum(AUXILIARIES)),
+	inletDepressionKpa: z.number().nullable(),
+	exhaustBackPressureKpa: z.number().nullable(),
+	/** What the record still lacks, in words; it gates nothing. */
+	stillNeeded: z.array(z.string()),
 	loggedById: z.string(),
 	ambient: z.unknown(),
 	settings: z.unknown(),

@@ -15,7 +15,6 @@ interface TraceRow {
 	filename: string;
 	objectKey: string;
 	sha256: Buffer;
-	isPrimary: boolean;
 }
 
 /**
@@ -28,7 +27,7 @@ export async function processTrace(deps: Deps, { traceId, quiet }: JobData<'trac
 			.updateTable('trace')
 			.set({ state: 'processing', error: null })
 			.where('id', '=', traceId)
-			.returning(['id', 'clientId', 'runId', 'filename', 'objectKey', 'sha256', 'isPrimary'])
+			.returning(['id', 'clientId', 'runId', 'filename', 'objectKey', 'sha256'])
 			.executeTakeFirst();
 	});
 	if (!trace) return;
@@ -69,7 +68,7 @@ async function keepFigures(
 	if ((await deps.store.size(columnarKey)) !== columnar.byteLength)
 		await deps.store.put(columnarKey, columnar);
 	await writing(deps.pools, SYSTEM, async (trx) => {
-		await supersede(trx, trace.id, deps.now());
+		const isPrimary = await supersede(trx, trace.id, deps.now());
 		const { id: reductionId } = await trx
 			.insertInto('reduction')
 			.values({
@@ -85,7 +84,7 @@ async function keepFigures(
 			})
 			.returning('id')
 			.executeTakeFirstOrThrow();
-		await insertResults(trx, trace, reductionId, ready);
+		await insertResults(trx, { ...trace, isPrimary }, reductionId, ready);
 		await trx
 			.updateTable('trace')
 			.set({
@@ -117,7 +116,7 @@ async function keepFigures(
 			.where('id', '=', trace.runId)
 			.returning('version')
 			.executeTakeFirstOrThrow();
-		if (!quiet && trace.isPrimary && ready.flags.length)
+		if (!quiet && isPrimary && ready.flags.length)
 			await enqueue(
 				trx,
 				'mail.notify',
@@ -132,9 +131,15 @@ async function keepFigures(
 	});
 }
 
-/** Earlier computations stay as history; lists and trends stop reading them. Locks the trace, so that two of them take turns. */
-async function supersede(trx: Trx, traceId: string, now: Date): Promise<void> {
-	await trx.selectFrom('trace').select('id').where('id', '=', traceId).forUpdate().executeTakeFirstOrThrow();
+/** Earlier computations stay as history; lists and trends stop reading them. Locks the trace, so that two of them take turns,
+ * and tells whether its figures are the run's, as of now. */
+async function supersede(trx: Trx, traceId: string, now: Date): Promise<boolean> {
+	const { isPrimary } = await trx
+		.selectFrom('trace')
+		.select('isPrimary')
+		.where('id', '=', traceId)
+		.forUpdate()
+		.executeTakeFirstOrThrow();
 	const old = await trx
 		.updateTable('reduction')
 		.set({ supersededAt: now })
@@ -144,9 +149,15 @@ async function supersede(trx: Trx, traceId: string, now: Date): Promise<void> {
 		.execute();
 	for (const { id } of old)
 		await trx.updateTable('metric').set({ isCurrent: false }).where('reductionId', '=', id).execute();
+	return isPrimary;
 }
 
-async function insertResults(trx: Trx, trace: TraceRow, reductionId: string, ready: Ready): Promise<void> {
+async function insertResults(
+	trx: Trx,
+	trace: TraceRow & { isPrimary: boolean },
+	reductionId: string,
+	ready: Ready
+): Promise<void> {
 	const { clientId, runId, id: traceId } = trace;
 	const metrics = Object.entries(ready.metrics).map(([code, metric]) => ({
 		clientId,

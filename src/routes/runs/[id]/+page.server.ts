@@ -5,6 +5,7 @@ import { z } from 'zod';
 import { FLAG_SEVERITIES } from '$lib/domain/model';
 import { may } from '$lib/server/access';
 import { listAttachments } from '$lib/server/attachments';
+import { getChecklist, listReadings } from '$lib/server/logbook';
 import {
 	acceptRun,
 	addLogLine,
@@ -25,7 +26,10 @@ const VoidForm = z.object({
 });
 const FlagForm = z.object({
 	reason: z.string().trim().min(1, 'Say what is wrong.').max(1000, 'At most 1000 characters.'),
-	severity: z.enum(FLAG_SEVERITIES).default('review')
+	severity: z.enum(FLAG_SEVERITIES).default('review'),
+	/** Of the stretch of the trace that it is about, s. */
+	from: z.number().min(0).optional(),
+	to: z.number().min(0).optional()
 });
 const LogForm = z.object({
 	text: z.string().trim().min(1, 'Write something.').max(4000, 'At most 4000 characters.'),
@@ -39,11 +43,13 @@ export const load: PageServerLoad = async ({ locals, params, depends }) => {
 	depends('app:run');
 	return pageData({ locals }, async () => {
 		const run = await getRun(deps, who, params.id);
-		const [curve, log, history, attachments] = await Promise.all([
+		const [curve, log, history, attachments, checklist, readings] = await Promise.all([
 			readCurve(deps, who, run.id),
 			listLogLines(deps, who, run.id),
 			runHistory(deps, who, run.id),
-			listAttachments(deps, who, { kind: 'run', ref: run.id })
+			listAttachments(deps, who, { kind: 'run', ref: run.id }),
+			getChecklist(deps, who, run.id),
+			listReadings(deps, who, run.id)
 		]);
 		const [acceptForm, voidForm, flagForm, logForm] = await Promise.all([
 			superValidate(zod4(ReviewForm), { id: 'accept', errors: false }),
@@ -57,6 +63,8 @@ export const load: PageServerLoad = async ({ locals, params, depends }) => {
 			log,
 			history,
 			attachments,
+			checklist,
+			readings,
 			acceptForm,
 			voidForm,
 			flagForm,

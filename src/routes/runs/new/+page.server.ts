@@ -10,7 +10,7 @@ import { listClients } from '$lib/server/clients';
 import { listFuelBatches } from '$lib/server/fuels';
 import { listLimitSets } from '$lib/server/limits';
 import { benchNeeds, makeBench, readRunStart } from '$lib/server/run-start';
-import { NewRun, openRun } from '$lib/server/runs';
+import { NewRun, openRun, proposeLimitSet } from '$lib/server/runs';
 import { labInstant, pageData, personMay, refused } from '$lib/server/web';
 import type { Actions, PageServerLoad } from './$types';
 import { BenchForm } from './bench-form';
@@ -66,6 +66,7 @@ export const load: PageServerLoad = async ({ locals, url }) => {
 			fuelBatch: start.fuelBatch ?? '',
 			booking: start.booking?.id ?? '',
 			...(start.kind ? { kind: start.kind } : {}),
+			limitSet: start.build ? ((await proposeLimitSet(deps, who, start.build)) ?? '') : '',
 			startedAt: wallClock(deps.now(), deps.config.labTimeZone)
 		};
 		return {

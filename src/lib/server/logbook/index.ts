@@ -1,0 +1,3 @@
+export { answerCheck, getChecklist, openChecks } from './checklist';
+export { addReading, listReadings } from './readings';
+export { Air, ChecklistView, NewCheck, NewReading, ReadingView } from './schemas';
