@@ -232,6 +232,6 @@ export async function runHistory(
 function detailOf(after: unknown): string | null {
 	if (typeof after !== 'object' || after === null) return null;
 	const { reason, filename, detail } = after as Record<string, unknown>;
-	const told = reason ?? filename ?? detail;
+	const told = detail ?? reason ?? filename;
 	return typeof told === 'string' ? told : null;
 }

@@ -26,25 +26,30 @@ export async function placeTrace(
 ) {
 	return writing(deps.pools, who, async (trx) => {
 		const { id: runId, clientId } = await resolve(trx, 'run', runRef);
+		// Traces before their run and in one order, as those who compute figures lock them: nobody waits in a circle.
+		const traces = await trx
+			.selectFrom('trace')
+			.select(['id', 'filename', 'state', 'isPrimary', 'timeOffsetS'])
+			.where('runId', '=', runId)
+			.orderBy('id')
+			.forUpdate()
+			.execute();
 		const run = await trx
 			.selectFrom('run')
 			.select(['number', 'state', 'version'])
 			.where('id', '=', runId)
 			.forUpdate()
 			.executeTakeFirstOrThrow();
-		const trace = await trx
-			.selectFrom('trace')
-			.select(['id', 'filename', 'state', 'isPrimary', 'timeOffsetS'])
-			.where('id', '=', z.uuid().safeParse(traceId).data ?? null)
-			.where('runId', '=', runId)
-			.executeTakeFirst();
+		const trace = traces.find(({ id }) => id === traceId);
 		if (!trace) throw notFound('This trace');
 		if (run.state === 'accepted' || run.state === 'voided')
 			throw conflict(`Run ${run.number} is ${run.state}: its figures stay as they are.`);
 		const told: [action: string, detail: string][] = [];
 		if (input.primary && !trace.isPrimary) {
-			if (trace.state !== 'ready')
+			if (!(await hasFigures(trx, trace.id)))
 				throw wrongField('primary', `the trace ${trace.filename} is ${trace.state}; it has no figures.`);
+			for (const { id } of traces.filter((other) => other.isPrimary))
+				await trx.updateTable('trace').set({ isPrimary: false }).where('id', '=', id).execute();
 			await makePrimary(trx, runId, trace.id);
 			told.push(['trace.primary', trace.filename]);
 		}
@@ -79,19 +84,20 @@ export async function placeTrace(
 	});
 }
 
+/** Figures that are being made again are figures still. */
+async function hasFigures(trx: Trx, traceId: string): Promise<boolean> {
+	const current = await trx
+		.selectFrom('reduction')
+		.select('id')
+		.where('traceId', '=', traceId)
+		.where('supersededAt', 'is', null)
+		.executeTakeFirst();
+	return current !== undefined;
+}
+
 /** Lists and trends read the metrics that are current: those of the one primary trace. */
 async function makePrimary(trx: Trx, runId: string, traceId: string): Promise<void> {
-	// In one order for all, and as `process` does: whoever computes figures now waits, and reads then which trace is primary.
-	const traces = await trx
-		.selectFrom('trace')
-		.select('id')
-		.where('runId', '=', runId)
-		.orderBy('id')
-		.forUpdate()
-		.execute();
-	for (const isPrimary of [false, true])
-		for (const { id } of traces.filter(({ id }) => (id === traceId) === isPrimary))
-			await trx.updateTable('trace').set({ isPrimary }).where('id', '=', id).execute();
+	await trx.updateTable('trace').set({ isPrimary: true }).where('id', '=', traceId).execute();
 	await trx.updateTable('metric').set({ isCurrent: false }).where('runId', '=', runId).execute();
 	await trx
 		.updateTable('metric')
