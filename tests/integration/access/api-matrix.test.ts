@@ -40,8 +40,6 @@ const rule = {
 const BODIES: Record<string, (things: Things) => unknown> = {
 	createClient: () => ({ code: code('N'), name: 'New' }),
 	createCell: () => ({ code: code('C'), name: 'New', absorber }),
-	changeCell: () => ({ rigUpMinutes: 30 }),
-	addTorqueChain: () => ({ torqueAt: 'flange', reason: 'matrix' }),
 	createFuel: () => ({ code: code('F'), name: 'New' }),
 	createFuelBatch: ({ client }) => ({ client, fuel: 'F1', code: code('Q') }),
 	createEngine: ({ client }) => ({
@@ -135,9 +133,6 @@ const LAB_OWNED = new Set(['cells', 'closures', 'fuels']);
 /** Their bodies speak of the one who asks, and name nothing that could be another's. */
 const OF_ONESELF = new Set(['changeMe', 'changePassword']);
 
-/** Their bodies speak of the one who asks, and name nothing that could be another's. */
-const OF_ONESELF = new Set(['changeMe', 'changePassword']);
-
 const fill = (path: string, id: string, part: string) =>
 	path.replace('{id}', id).replace(/\{(trace|attachment)Id\}/, part);
 /** What stands under a thing in a path: one of its attachments, else its trace. */
@@ -152,11 +147,8 @@ const bodyOf = ({ described }: Operation, things: Things) => {
 	if (!body) throw new Error(`tests/integration/access: tell a right body for ${described.operationId}`);
 	return body(things);
 };
-const QUERIES: Record<string, string> = {
-	readTrend: '?metric=peak_power',
-	runsTouchedByTorqueChain: '?validFrom=2026-01-01T00:00:00Z'
-};
-const queryOf = ({ described }: Operation) => QUERIES[described.operationId] ?? '';
+const queryOf = ({ described }: Operation) =>
+	described.operationId === 'readTrend' ? '?metric=peak_power' : '';
 
 beforeAll(async () => {
 	lab = await makeAccessLab(stack.current);

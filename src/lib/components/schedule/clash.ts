@@ -8,7 +8,7 @@ export interface Place {
 	to: string;
 }
 /** A bar that looks for a place: an existing booking, or none yet. */
-export interface Wanted extends Place {
+interface Wanted extends Place {
 	id: string | null;
 	/** Number of the slot that it would replace: not in its own way. */
 	replaces?: string | null;

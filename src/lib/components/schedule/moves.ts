@@ -11,7 +11,7 @@ type Moved = {
 	isAsked: boolean;
 };
 
-export interface Outcome {
+interface Outcome {
 	/** What happened, or why nothing did. */
 	sentence: string;
 	/** Someone else changed it meanwhile: how it is now has to be read. */

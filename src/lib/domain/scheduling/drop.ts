@@ -2,7 +2,7 @@ import { instantsAt, wallClock } from '../time';
 import type { Interval } from './intervals';
 
 /** A stretch on the lab's wall clock, `yyyy-MM-ddTHH:mm`. */
-export interface WallSpan {
+interface WallSpan {
 	from: string;
 	to: string;
 }
