@@ -2,8 +2,8 @@
 
 export const DEMO_PASSWORD = 'a swinging stator weighs torque';
 
-export const DEMO_STAFF = ['admin', 'manager', 'engineer', 'builder', 'operator'].map(
-	(role) => `${role}@fellmoor.example`
+export const DEMO_STAFF = ['admin', 'manager', 'engineer', 'builder', 'operator', 'maud', 'corin'].map(
+	(name) => `${name}@fellmoor.example`
 );
 
 export const DEMO_CLIENTS = [

@@ -9,6 +9,19 @@ const ERROR = 50; // the logger's level for errors
  * @returns {() => void} ends it
  */
 export function watchForErrors(name, file) {
+	return watchLines(file, (line) => {
+		const told = errorIn(line);
+		if (told) console.error(`[${name}] ${told}`);
+	});
+}
+
+/**
+ * Hands on every line that a log file gains.
+ * @param {string} file
+ * @param {(line: string) => void} each
+ * @returns {() => void} ends it
+ */
+export function watchLines(file, each) {
 	let at = sizeOf(file);
 	let cut = '';
 	const look = () => {
@@ -21,10 +34,7 @@ export function watchForErrors(name, file) {
 		closeSync(handle);
 		const lines = (cut + bytes.toString('utf8')).split('\n');
 		cut = lines.pop() ?? '';
-		for (const line of lines) {
-			const told = errorIn(line);
-			if (told) console.error(`[${name}] ${told}`);
-		}
+		lines.forEach(each);
 	};
 	const timer = setInterval(look, 500);
 	timer.unref();

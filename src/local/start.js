@@ -3,7 +3,7 @@ import { setTimeout as sleep } from 'node:timers/promises';
 import { DEMO_CLIENTS, DEMO_PASSWORD, DEMO_STAFF, wantsDemo } from './demo.js';
 import { webSettings } from './environment.js';
 import { endLeftovers, forgetRunState, takeLauncherPlace, writeRunState } from './launcher-state.js';
-import { watchForErrors } from './log-watch.js';
+import { watchForErrors, watchLines } from './log-watch.js';
 import { migrate } from './migration.js';
 import { Mendable, localFolder, makeFolder, root, textOf } from './place.js';
 import { checkNode, ensureBuild, ensurePackages } from './prepare.js';
@@ -138,7 +138,11 @@ async function waitForHealth() {
 function startSeed(cluster) {
 	const seed = startOwn('demo seed', ['--import', 'tsx', 'src/seed.ts'], state.env);
 	console.log('The demo laboratory is being filled in; its runs appear over the next minutes.');
+	const endProgress = watchLines(seed.log, (line) => {
+		if (/^Demo lab: \d+ of \d+ traces sent$/.test(line)) console.log(line);
+	});
 	void seed.gone.then((how) => {
+		endProgress();
 		own.splice(own.indexOf(seed), 1);
 		if (stopping) return;
 		if (how === 'ended with code 0') {

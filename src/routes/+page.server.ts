@@ -1,4 +1,4 @@
 import { redirect } from '@sveltejs/kit';
 import type { PageServerLoad } from './$types';
 
-export const load: PageServerLoad = () => redirect(307, '/runs');
+export const load: PageServerLoad = () => redirect(307, '/today');

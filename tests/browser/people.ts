@@ -1,3 +1,4 @@
+import type { Role } from '../../src/lib/server/access';
 import { addPerson, createTokenFor } from '../../src/lib/server/auth';
 import { readConfig } from '../../src/lib/server/config';
 import { closeDeps, openDeps } from '../../src/lib/server/deps';
@@ -8,7 +9,7 @@ export const PASSWORD = 'a sentence nobody guesses';
 interface Wanted {
 	email: string;
 	name: string;
-	role: 'client' | 'manager';
+	role: Role;
 	clientCode?: string;
 }
 type Thing = { id: string; number: string };

@@ -12,6 +12,10 @@ export const load: PageServerLoad = async ({ locals, url }) => {
 			listBuilds(locals.deps, who, { ...filters, limit: 50, cursor: given.cursor }),
 			listEngines(locals.deps, who)
 		]);
-		return { builds, engines, filters };
+		return {
+			builds,
+			engines: engines.map(({ id, client, code, name }) => ({ id, client, code, name })),
+			filters
+		};
 	});
 };

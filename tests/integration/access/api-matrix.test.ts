@@ -55,6 +55,9 @@ const BODIES: Record<string, (things: Things) => unknown> = {
 	}),
 	createBuild: ({ client, engine }) => ({ client, engine, number: code('B'), title: 'New' }),
 	changeBuild: () => ({ state: 'ready' }),
+	changeEngine: () => ({ name: 'Changed' }),
+	changeFuel: () => ({ name: 'Changed' }),
+	changeFuelBatch: () => ({ ron: 95 }),
 	createLimitSet: ({ client }) => ({ client, code: code('L'), title: 'New', rules: [rule] }),
 	addLimitSetVersion: () => ({ rules: [rule] }),
 	requestBooking: ({ build }) => ({ cell: 'C1', build, from, to }),
@@ -101,6 +104,7 @@ function idFor(path: string, things: Things): string {
 	const kinds: Record<string, string> = {
 		clients: things.client,
 		cells: lab.cell,
+		fuels: lab.fuel,
 		closures: lab.closure,
 		engines: things.engine,
 		builds: things.build,
@@ -116,7 +120,7 @@ function idFor(path: string, things: Things): string {
 }
 
 /** Things of the lab's that no client owns: nothing is foreign there. */
-const LAB_OWNED = new Set(['cells', 'closures']);
+const LAB_OWNED = new Set(['cells', 'closures', 'fuels']);
 
 const fill = (path: string, id: string, part: string) =>
 	path.replace('{id}', id).replace(/\{(trace|attachment)Id\}/, part);

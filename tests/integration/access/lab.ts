@@ -30,6 +30,7 @@ export interface Things {
 export interface AccessLab {
 	tokens: Record<Role | 'rival', string>;
 	cell: string;
+	fuel: string;
 	closure: string;
 	own: Things;
 	foreign: Things;
@@ -73,7 +74,7 @@ export async function makeAccessLab(stack: Stack): Promise<AccessLab> {
 			name: 'Cell',
 			absorber: { kind: 'ac', maxPowerKw: 300, maxTorqueNm: 500, maxSpeedRpm: 9000 }
 		});
-		await made(manager, '/fuels', { code: 'F1', name: 'Fuel' });
+		const fuel = await made(manager, '/fuels', { code: 'F1', name: 'Fuel' });
 		const closure = await made(manager, '/closures', {
 			cell: 'C1',
 			from: '2031-01-01T08:00:00Z',
@@ -174,7 +175,7 @@ export async function makeAccessLab(stack: Stack): Promise<AccessLab> {
 		};
 		const own = await things('AA', 'OWN', 2);
 		const foreign = await things('BB', CANARY, 3);
-		return { tokens, cell: cell.id, closure: closure.id, own, foreign, call };
+		return { tokens, cell: cell.id, fuel: fuel.id, closure: closure.id, own, foreign, call };
 	} finally {
 		await closeDeps(deps);
 	}

@@ -24,16 +24,15 @@ const pages = readdirSync(ROUTES, { recursive: true, encoding: 'utf8' })
 	.map((file) => '/' + file.replaceAll('\\', '/').replace(/\/?\+page\.server\.ts$/, ''))
 	.sort();
 
+/** Things of the lab's that no client owns: nothing is foreign there. */
+type LabOwned = 'fuel' | 'cell';
+const isLabOwned = (id: keyof Things | LabOwned): id is LabOwned => id === 'fuel' || id === 'cell';
+
 /** Who may read each page, what its id is, and who may do each of its actions. */
-interface Told {
-	read: Action | null;
-	/** What the id in its address names, of a client. */
-	id?: keyof Things;
-	/** What it names, of the lab: nothing is foreign there. */
-	labs?: 'cell';
-	actions?: Record<string, Action>;
-}
-const TOLD: Record<string, Told> = {
+const TOLD: Record<
+	string,
+	{ read: Action | null; id?: keyof Things | LabOwned; actions?: Record<string, Action> }
+> = {
 	'/': { read: null },
 	'/sign-in': { read: null },
 	'/account': { read: 'account.own', actions: { create: 'account.own', revoke: 'account.own' } },
@@ -55,24 +54,38 @@ const TOLD: Record<string, Told> = {
 		id: 'build',
 		actions: { state: 'build.write', follow: 'build.follow', unfollow: 'build.follow' }
 	},
+	'/builds/[id]/edit': { read: 'build.write', id: 'build', actions: { default: 'build.write' } },
+	'/builds/engines': { read: 'engine.read' },
+	'/builds/engines/[id]': {
+		read: 'engine.read',
+		id: 'engine',
+		actions: { recompute: 'engine.write' }
+	},
+	'/builds/engines/[id]/edit': { read: 'engine.write', id: 'engine', actions: { default: 'engine.write' } },
 	'/builds/engines/new': { read: 'engine.write', actions: { default: 'engine.write' } },
 	'/builds/new': { read: 'build.write', actions: { default: 'build.write' } },
 	'/lab': { read: null },
 	'/lab/cells': { read: 'lab.read' },
 	'/lab/cells/[code]': {
 		read: 'lab.read',
-		labs: 'cell',
+		id: 'cell',
 		actions: { close: 'closure.write', open: 'closure.write', recompute: 'cell.write' }
 	},
-	'/lab/cells/[code]/edit': { read: 'cell.write', labs: 'cell', actions: { default: 'cell.write' } },
+	'/lab/cells/[code]/edit': { read: 'cell.write', id: 'cell', actions: { default: 'cell.write' } },
 	'/lab/cells/[code]/torque-chain/new': {
 		read: 'cell.write',
-		labs: 'cell',
+		id: 'cell',
 		actions: { default: 'cell.write' }
 	},
 	'/lab/cells/new': { read: 'cell.write', actions: { default: 'cell.write' } },
 	'/lab/clients': { read: 'client.read', actions: { default: 'client.create' } },
 	'/lab/fuels': { read: 'lab.read' },
+	'/lab/fuels/[id]': { read: 'lab.read', id: 'fuel' },
+	'/lab/fuels/[id]/edit': { read: 'fuel.write', id: 'fuel', actions: { default: 'fuel.write' } },
+	'/lab/fuels/batches/[id]': { read: 'lab.read', id: 'batch', actions: { recompute: 'fuel.write' } },
+	'/lab/fuels/batches/[id]/edit': { read: 'fuel.write', id: 'batch', actions: { default: 'fuel.write' } },
+	'/lab/fuels/batches/new': { read: 'fuel.write', actions: { default: 'fuel.write' } },
+	'/lab/fuels/new': { read: 'fuel.write', actions: { default: 'fuel.write' } },
 	'/lab/limits': { read: 'lab.read' },
 	'/lab/limits/[code]': { read: 'lab.read', id: 'limitSet' },
 	'/lab/limits/[code]/new-version': {
@@ -87,8 +100,9 @@ const TOLD: Record<string, Told> = {
 		id: 'run',
 		actions: { close: 'run.open', accept: 'run.review', void: 'run.review', flag: 'run.flag', log: 'run.log' }
 	},
-	'/runs/new': { read: 'run.open', actions: { default: 'run.open' } },
+	'/runs/new': { read: 'run.open', actions: { open: 'run.open', prepare: 'engine.write' } },
 	'/schedule': { read: 'schedule.read' },
+	'/today': { read: 'schedule.read' },
 	'/trends': { read: 'trend.read' }
 };
 
@@ -145,8 +159,8 @@ beforeAll(async () => {
 		cookies[role] = await signIn(role === 'client' ? 'client@aa.example' : `${role}@lab.example`);
 });
 
+const idOf = (things: Things, id: keyof Things | LabOwned) => (isLabOwned(id) ? lab[id] : things[id]);
 const withId = (page: string, id: string) => page.replace(/\[(id|code)\]/, id);
-const ownId = ({ id, labs }: Told) => (id ? lab.own[id] : labs ? lab[labs] : '');
 const may = (role: Role, action: Action) => (ACTIONS[action].roles as readonly Role[]).includes(role);
 
 describe('every page', () => {
@@ -170,7 +184,7 @@ describe('every page', () => {
 		for (const [page, told] of Object.entries(TOLD)) {
 			if (!told.read) continue;
 			for (const role of ROLES) {
-				const answer = await ask(cookies[role], withId(page, ownId(told)));
+				const answer = await ask(cookies[role], withId(page, told.id ? idOf(lab.own, told.id) : ''));
 				expect(answer.status, `${role} ${page}: ${answer.text.slice(0, 200)}`).toBe(
 					may(role, told.read) ? 200 : 403
 				);
@@ -180,7 +194,7 @@ describe('every page', () => {
 
 	it('shows a client a rival’s thing as it shows none', async () => {
 		for (const [page, told] of Object.entries(TOLD)) {
-			if (!told.id || !told.read || !may('client', told.read)) continue;
+			if (!told.id || isLabOwned(told.id)) continue;
 			for (const suffix of ['', '/__data.json']) {
 				const foreign = await ask(cookies.client, withId(page, lab.foreign[told.id]) + suffix);
 				const absent = await ask(cookies.client, withId(page, ABSENT) + suffix);
@@ -195,7 +209,7 @@ describe('every page', () => {
 
 	it('holds nothing of a rival on any page that a client may open', async () => {
 		for (const [page, told] of Object.entries(TOLD)) {
-			const answer = await ask(cookies.client, withId(page, ownId(told)));
+			const answer = await ask(cookies.client, withId(page, told.id ? idOf(lab.own, told.id) : ''));
 			expect(answer.text, page).not.toMatch(new RegExp(`${CANARY}|BB-[RB]-`));
 		}
 	});
@@ -206,19 +220,23 @@ describe('every page', () => {
 			for (const [name, action] of Object.entries(told.actions ?? {})) {
 				const suffix = name === 'default' ? '' : `?/${name}`;
 				for (const role of ROLES.filter((each) => !may(each, action))) {
-					const answer = await ask(cookies[role], withId(page, ownId(told)) + suffix, {
-						reason: 'x',
-						text: 'x',
-						state: 'ready'
-					});
+					const answer = await ask(
+						cookies[role],
+						withId(page, told.id ? idOf(lab.own, told.id) : '') + suffix,
+						{
+							reason: 'x',
+							text: 'x',
+							state: 'ready'
+						}
+					);
 					expect(answer.status, `${role} ${page}${suffix}`).toBe(403);
 					asked++;
 				}
-				const nobody = await ask(null, withId(page, ownId(told)) + suffix, {
+				const nobody = await ask(null, withId(page, told.id ? idOf(lab.own, told.id) : '') + suffix, {
 					reason: 'x'
 				});
 				expect(nobody.status, `nobody ${page}${suffix}`).toBe(303);
-				if (!told.id || !may('client', action)) continue;
+				if (!told.id || isLabOwned(told.id) || !may('client', action)) continue;
 				const form = {
 					reason: 'x',
 					text: 'x',

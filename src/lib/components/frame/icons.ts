@@ -1,5 +1,6 @@
 /** Our own line icons on a 20 × 20 grid, one stroke weight; each is the `d` of a single path. */
 export const ICONS = {
+	today: 'M3 5.5h14M3 10h14M3 14.5h14M5 5.5h5M8 10h7M4.5 14.5h4M12 3v14',
 	runs: 'M3 3v14h14M5.5 13c2-5.5 4.5-7.5 7-7.5 1.8 0 3 1 4 3M5.5 10.5c3-1.5 7-1.8 11 1.5',
 	builds: 'M4 7.5 10 4l6 3.5v6L10 17l-6-3.5zM4 7.5l6 3.5 6-3.5M10 11v6',
 	schedule: 'M3 3.5h14v13H3zM3 7.5h14M10 7.5v9M5 11h3M12 13.5h3',

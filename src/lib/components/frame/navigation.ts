@@ -8,6 +8,7 @@ export interface Place {
 
 /** The places of the rail, in the order of a day's work. */
 export const PLACES: readonly Place[] = [
+	{ href: '/today', label: 'Today', icon: 'today' },
 	{ href: '/runs', label: 'Runs', icon: 'runs' },
 	{ href: '/builds', label: 'Builds', icon: 'builds' },
 	{ href: '/schedule', label: 'Schedule', icon: 'schedule' },

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import type { Metrics, Rule, RunContext } from '../model';
 import type { Trace, TraceColumn } from '../trace/trace';
-import { judge, tableValue } from './judge';
+import { judge, judgeFuel, tableValue } from './judge';
 
 const column = (code: string, values: Float64Array, unit = '-'): TraceColumn => ({
 	code,
@@ -239,4 +239,14 @@ describe('tableValue', () => {
 		[6000, 300],
 		[9000, 300]
 	])('at %d', (x, y) => expect(tableValue(table, x)).toBeCloseTo(y, 9));
+});
+
+describe('a fuel batch by itself', () => {
+	const octane = rule({ title: 'Octane', subject: { fuel: 'ron' }, relation: 'at_least', limit: 95 });
+	it('crosses the rules that speak of it', () =>
+		expect(judgeFuel([octane, rule()], { ron: { value: 93 } }).map(({ rule }) => rule)).toEqual(['Octane']));
+	it('crosses none that it keeps, and none of what is not measured', () => {
+		expect(judgeFuel([octane], { ron: { value: 95 } })).toEqual([]);
+		expect(judgeFuel([octane], {})).toEqual([]);
+	});
 });

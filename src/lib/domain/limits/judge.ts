@@ -1,5 +1,15 @@
 import { channelOf } from '../channels/catalogue';
-import type { Finding, Flag, Metrics, Relation, Rule, RuleLimit, RunContext } from '../model';
+import type {
+	Finding,
+	Flag,
+	FuelFacts,
+	FuelPropertyName,
+	Metrics,
+	Relation,
+	Rule,
+	RuleLimit,
+	RunContext
+} from '../model';
 import { atS, figure } from '../trace/spans';
 import { columnOf, type Trace } from '../trace/trace';
 import { evaluateExpression, parseExpression } from './expression';
@@ -190,6 +200,10 @@ function judgeValue(
 	};
 }
 
+function judgeFuelProperty(rule: Rule, value: number): Flag | null | { reason: string } {
+	return judgeValue(rule, 'fuel' in rule.subject ? rule.subject.fuel : '', '', value, NaN, null);
+}
+
 function judgeRule(
 	rule: Rule,
 	trace: Trace,
@@ -215,7 +229,7 @@ function judgeRule(
 	if ('fuel' in subject) {
 		const property = (context.fuel as Record<string, { value: number } | undefined>)[subject.fuel];
 		if (!property) return { reason: `the fuel batch states no ${subject.fuel}` };
-		return judgeValue(rule, subject.fuel, '', property.value, NaN, null);
+		return judgeFuelProperty(rule, property.value);
 	}
 	return judgeTrace(rule, trace);
 }
@@ -243,4 +257,13 @@ export function judge(trace: Trace, metrics: Metrics, context: RunContext): Judg
 		else flags.push(outcome);
 	}
 	return { flags, findings };
+}
+
+/** Judges a fuel batch by itself against those rules that speak of the fuel. @returns a flag for each that it crosses */
+export function judgeFuel(rules: readonly Rule[], fuel: FuelFacts): Flag[] {
+	return rules.flatMap((rule) => {
+		const property = 'fuel' in rule.subject ? fuel[rule.subject.fuel as FuelPropertyName] : undefined;
+		const outcome = property ? judgeFuelProperty(rule, property.value) : null;
+		return outcome && !('reason' in outcome) ? [outcome] : [];
+	});
 }

@@ -4,7 +4,8 @@ import type { Metrics } from '../model';
 
 /** A step longer than this many usual steps is a hole in the record and counts nothing. */
 const HOLE_STEPS = 5;
-const RUNNING_RPM = 100;
+/** Faster than this the engine runs and its hours count, rev/min. */
+export const RUNNING_RPM = 100;
 
 const INTEGRAL = 'trapezoid.1';
 const COUNT = 'count.1';

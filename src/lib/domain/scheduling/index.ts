@@ -1,4 +1,15 @@
 export { absorberRemarks, type Remark } from './absorber';
+export {
+	drawnStretch,
+	isRunning,
+	lateMinutes,
+	overrunMinutes,
+	progressOf,
+	recordNeeds,
+	waitsMinutes,
+	type Need,
+	type Recorded
+} from './day-lane';
 export { firstFit } from './first-fit';
 export { instantOrDayFromIso } from './instants';
 export {

@@ -125,13 +125,14 @@ export async function declineBooking(
 	deps: Deps,
 	who: Principal,
 	ref: string,
-	{ reason, ifMatch = null }: DecisionInput = {}
+	{ reason, ifMatch = null }: DecisionInput = {},
+	{ asHistory = false }: AsHistory = {}
 ): Promise<Booking> {
 	requireMay(who, 'booking.decide');
 	return writing(deps.pools, who, async (trx) => {
 		const row = await lockBooking(trx, ref, ifMatch);
 		requireOpen(row, ['requested'], deps.now(), 'declined');
-		await end(trx, deps, who, row, 'declined', reason);
+		await end(trx, deps, who, row, { state: 'declined', reason, asHistory });
 		return bookingView(trx, deps, who, row.id);
 	});
 }
@@ -141,7 +142,8 @@ export async function cancelBooking(
 	deps: Deps,
 	who: Principal,
 	ref: string,
-	{ reason, ifMatch = null }: DecisionInput = {}
+	{ reason, ifMatch = null }: DecisionInput = {},
+	{ asHistory = false }: AsHistory = {}
 ): Promise<Booking> {
 	requireMay(who, 'booking.cancel');
 	return writing(deps.pools, who, async (trx) => {
@@ -160,9 +162,14 @@ export async function cancelBooking(
 				.where('state', '=', 'requested')
 				.execute();
 		}
-		await end(trx, deps, who, row, 'cancelled', reason);
+		await end(trx, deps, who, row, { state: 'cancelled', reason, asHistory });
 		return bookingView(trx, deps, who, row.id);
 	});
+}
+
+interface Ending extends AsHistory {
+	state: 'declined' | 'cancelled';
+	reason: string | null | undefined;
 }
 
 async function end(
@@ -170,8 +177,7 @@ async function end(
 	deps: Deps,
 	who: Principal,
 	row: LockedBooking,
-	state: 'declined' | 'cancelled',
-	reason: string | null | undefined
+	{ state, reason, asHistory }: Ending
 ): Promise<void> {
 	const version = row.version + 1;
 	await trx
@@ -194,5 +200,5 @@ async function end(
 		before: { state: row.state },
 		after: { state, reason: reason || null }
 	});
-	await promiseMail(trx, `booking.${state}`, row, version);
+	if (!asHistory) await promiseMail(trx, `booking.${state}`, row, version);
 }

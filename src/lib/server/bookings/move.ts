@@ -6,6 +6,7 @@ import { conflict, forbidden } from '../problem';
 import { resolve } from '../refs';
 import { requireFree, tellingClash, type Wish } from './clash';
 import { lockBooking, lockCells, promiseMail, requireOpen, type LockedBooking } from './locked';
+import type { AsHistory } from './request';
 import type { Booking, BookingMoveInput } from './schemas';
 import { requireBookingTimes } from './times';
 import { bookingView, mayChange } from './view';
@@ -25,7 +26,8 @@ export async function moveBooking(
 	who: Principal,
 	ref: string,
 	move: BookingMoveInput,
-	ifMatch: number | null = null
+	ifMatch: number | null = null,
+	{ asHistory = false }: AsHistory = {}
 ): Promise<Booking> {
 	requireMay(who, 'booking.move');
 	let wish: Wish | null = null;
@@ -43,7 +45,7 @@ export async function moveBooking(
 		requireBookingTimes(target.during, now);
 		if (isSame(row, target)) return bookingView(trx, deps, who, row.id);
 		if (row.state === 'confirmed' && !may(who, 'booking.decide'))
-			return bookingView(trx, deps, who, await askToMove(trx, deps, who, row, target));
+			return bookingView(trx, deps, who, await askToMove(trx, deps, who, row, target, asHistory));
 		if (row.state === 'confirmed') {
 			wish = await wishOf(trx, row, target);
 			await requireFree(trx, deps, who, wish);
@@ -54,7 +56,7 @@ export async function moveBooking(
 				.where('bookingId', '=', row.id)
 				.execute();
 		}
-		await setTarget(trx, who, row, target);
+		await setTarget(trx, who, row, target, asHistory);
 		return bookingView(trx, deps, who, row.id);
 	};
 	return tellingClash(
@@ -86,7 +88,13 @@ async function wishOf(trx: Trx, row: LockedBooking, target: Target): Promise<Wis
 	return { key: row.id, cellId: target.cellId, buildId: row.buildId, during, ignore: [row.id] };
 }
 
-async function setTarget(trx: Trx, who: Principal, row: LockedBooking, target: Target): Promise<void> {
+async function setTarget(
+	trx: Trx,
+	who: Principal,
+	row: LockedBooking,
+	target: Target,
+	asHistory: boolean
+): Promise<void> {
 	const confirmed = row.state === 'confirmed';
 	const version = row.version + 1;
 	await trx
@@ -110,7 +118,8 @@ async function setTarget(trx: Trx, who: Principal, row: LockedBooking, target: T
 		after: { cellId: target.cellId, ...target.during }
 	});
 	// Who drags a request before confirming it tells its new time by the confirmation.
-	if (confirmed || !may(who, 'booking.decide')) await promiseMail(trx, 'booking.moved', row, version);
+	if (!asHistory && (confirmed || !may(who, 'booking.decide')))
+		await promiseMail(trx, 'booking.moved', row, version);
 }
 
 async function askToMove(
@@ -118,7 +127,8 @@ async function askToMove(
 	deps: Deps,
 	who: Principal,
 	row: LockedBooking,
-	target: Target
+	target: Target,
+	asHistory: boolean
 ): Promise<string> {
 	const open = await trx
 		.selectFrom('booking')
@@ -156,6 +166,6 @@ async function askToMove(
 		clientId,
 		after: { number, replaces: row.number, cellId: target.cellId, ...target.during }
 	});
-	await promiseMail(trx, 'booking.requested', { id, clientId }, version);
+	if (!asHistory) await promiseMail(trx, 'booking.requested', { id, clientId }, version);
 	return id;
 }

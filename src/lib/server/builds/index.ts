@@ -1,14 +1,20 @@
 import { sql } from 'kysely';
 import type { z } from 'zod';
+import { buildChangesInWords } from '$lib/domain/builds/build-words';
+import { changedFields } from '$lib/domain/history/changes';
 import type { Principal } from '../access';
-import { page, readCursor } from '../api';
+import { containing, page, sortedBy, type SortKey } from '../api';
 import { jsonb, reading, recordAudit, writing, type Trx } from '../db';
 import type { Deps } from '../deps';
-import { stale } from '../problem';
+import { readHistory, type History } from '../history';
+import { conflict, stale } from '../problem';
 import { clientFor, resolve } from '../refs';
-import type { Build, BuildChange, NewBuild } from './schemas';
+import type { Build, BuildChange, BuildQuery, NewBuild } from './schemas';
 
-export { BuildChange, BuildQuery, BuildView, NewBuild, type Build } from './schemas';
+export { engineHours, getBuildRecord } from './record';
+export { BuildChange, BuildQuery, BuildRecord, BuildView, HoursView, NewBuild, type Build } from './schemas';
+
+const RUNS = sql<number>`(select count(*) from run r where r.build_id = b.id and r.client_id = b.client_id)`;
 
 function selectBuilds(trx: Trx, who: Principal) {
 	return trx
@@ -20,6 +26,7 @@ function selectBuilds(trx: Trx, who: Principal) {
 			'b.id',
 			'c.code as client',
 			'e.code as engine',
+			'e.id as engineId',
 			'e.name as engineName',
 			'b.number',
 			'b.title',
@@ -28,7 +35,6 @@ function selectBuilds(trx: Trx, who: Principal) {
 			'b.parts',
 			'b.state',
 			'b.version',
-			'b.createdAt',
 			eb
 				.exists(
 					eb
@@ -37,16 +43,12 @@ function selectBuilds(trx: Trx, who: Principal) {
 						.where('f.personId', '=', who.personId)
 				)
 				.as('following'),
-			eb
-				.selectFrom('run as r')
-				.whereRef('r.buildId', '=', 'b.id')
-				.select(sql<number>`count(*)`.as('n'))
-				.as('runs')
+			RUNS.as('runs')
 		]);
 }
 
 type Row = Awaited<ReturnType<ReturnType<typeof selectBuilds>['executeTakeFirstOrThrow']>>;
-const toBuild = (row: Row): Build & { createdAt: Date } => ({
+const toBuild = (row: Row): Build => ({
 	...row,
 	parts: row.parts as Build['parts'],
 	state: row.state as Build['state'],
@@ -91,47 +93,43 @@ export async function createBuild(
 	});
 }
 
+const SORTS: Readonly<Record<'added' | 'number' | 'title' | 'engine' | 'runs', SortKey>> = {
+	added: { by: sql`b.created_at`, type: 'timestamptz' },
+	number: { by: sql`b.number`, type: 'text' },
+	title: { by: sql`lower(b.title)`, type: 'text' },
+	engine: { by: sql`e.code`, type: 'text' },
+	runs: { by: RUNS, type: 'float8' }
+};
+
 export async function listBuilds(
 	deps: Deps,
 	who: Principal,
-	query: {
-		client?: string | undefined;
-		engine?: string | undefined;
-		limit: number;
-		cursor?: string | undefined;
-	}
+	query: z.output<typeof BuildQuery> & { limit: number; cursor?: string | undefined }
 ) {
+	const sorted = sortedBy(SORTS, query.sort ?? '-added', sql`b.id`);
 	const rows = await reading(deps.pools, who, async (trx) => {
-		let all = selectBuilds(trx, who)
-			.orderBy('b.createdAt', 'desc')
-			.orderBy('b.id')
+		let some = selectBuilds(trx, who)
+			.select(sorted.key.as('sortKey'))
+			.orderBy(sorted.order)
 			.limit(query.limit + 1);
-		if (query.client)
-			all = all.where(
-				'b.clientId',
-				'=',
-				(await resolve(trx, 'client', query.client, { field: 'client' })).id
-			);
-		if (query.engine)
-			all = all.where(
-				'b.engineId',
-				'=',
-				(await resolve(trx, 'engine', query.engine, { field: 'engine' })).id
-			);
-		if (query.cursor) {
-			const [at, id] = readCursor(query.cursor);
-			all = all.where((eb) =>
-				eb(sql`(date_trunc('milliseconds', b.created_at))`, '<', new Date(at!)).or(
-					eb.and([
-						eb(sql`(date_trunc('milliseconds', b.created_at))`, '=', new Date(at!)),
-						eb('b.id', '>', id!)
-					])
-				)
-			);
+		if (query.client) {
+			const client = await resolve(trx, 'client', query.client, { field: 'client' });
+			some = some.where('b.clientId', '=', client.id);
 		}
-		return all.execute();
+		if (query.engine) {
+			const engine = await resolve(trx, 'engine', query.engine, { field: 'engine' });
+			some = some.where('b.engineId', '=', engine.id);
+		}
+		if (query.state) some = some.where('b.state', '=', query.state);
+		if (query.q) {
+			const part = containing(query.q);
+			some = some.where((eb) => eb.or([eb('b.number', 'ilike', part), eb('b.title', 'ilike', part)]));
+		}
+		if (query.cursor) some = some.where(sorted.after(query.cursor));
+		return some.execute();
 	});
-	return page(rows.map(toBuild), query.limit, (row) => [row.createdAt.toISOString(), row.id]);
+	const { items, nextCursor } = page(rows, query.limit, (row) => [row.sortKey, row.id]);
+	return { items: items.map(toBuild), nextCursor };
 }
 
 export async function getBuild(deps: Deps, who: Principal, ref: string): Promise<Build> {
@@ -141,6 +139,10 @@ export async function getBuild(deps: Deps, who: Principal, ref: string): Promise
 	});
 }
 
+/**
+ * Changes a build's title, state or parts. What has run keeps its parts: the record of its runs speaks of them.
+ * @throws Problem 409 for other parts after a run
+ */
 export async function changeBuild(
 	deps: Deps,
 	who: Principal,
@@ -150,32 +152,45 @@ export async function changeBuild(
 ) {
 	return writing(deps.pools, who, async (trx) => {
 		const { id, clientId } = await resolve(trx, 'build', ref);
-		const before = await trx
-			.selectFrom('build')
-			.select(['title', 'parts', 'state', 'version'])
-			.where('id', '=', id)
-			.forUpdate()
-			.executeTakeFirstOrThrow();
+		// A run that is opened meanwhile waits for this lock, or this for the run.
+		await trx.selectFrom('build').select('id').where('id', '=', id).forUpdate().execute();
+		const before = toBuild(await selectBuilds(trx, who).where('b.id', '=', id).executeTakeFirstOrThrow());
 		if (ifMatch !== null && ifMatch !== before.version) throw stale();
+		const changed = changedFields(before, change as Partial<Build>);
+		if (changed.length === 0) return before;
+		if (changed.includes('parts') && before.runs > 0)
+			throw conflict(
+				`Build ${before.number} has run: its parts stay as they were then. Make a new build from it for what is changed.`
+			);
+		const { title, state, parts } = change;
 		await trx
 			.updateTable('build')
 			.set({
 				version: before.version + 1,
-				...(change.title === undefined ? {} : { title: change.title }),
-				...(change.state === undefined ? {} : { state: change.state }),
-				...(change.parts === undefined ? {} : { parts: jsonb(change.parts) as never })
+				...(title === undefined ? {} : { title }),
+				...(state === undefined ? {} : { state }),
+				...(parts === undefined ? {} : { parts: jsonb(parts) as never })
 			})
 			.where('id', '=', id)
 			.execute();
+		const of = (build: Partial<Build>) => Object.fromEntries(changed.map((field) => [field, build[field]]));
 		await recordAudit(trx, who, {
 			action: 'build.change',
 			subject: 'build',
 			subjectId: id,
 			clientId,
-			before,
-			after: change
+			before: of(before),
+			after: of(change as Partial<Build>)
 		});
 		return toBuild(await selectBuilds(trx, who).where('b.id', '=', id).executeTakeFirstOrThrow());
+	});
+}
+
+/** Who changed what on a build: its state, its parts, its title, what is attached to it. */
+export async function buildHistory(deps: Deps, who: Principal, ref: string): Promise<History> {
+	return reading(deps.pools, who, async (trx) => {
+		const { id } = await resolve(trx, 'build', ref);
+		return readHistory(trx, 'build', id, buildChangesInWords);
 	});
 }
 

@@ -204,6 +204,15 @@ export interface Engine {
   version: Generated<number>;
 }
 
+export interface EngineVersion {
+  clientId: string;
+  createdAt: Generated<Timestamp>;
+  createdBy: string | null;
+  engineId: string;
+  facts: Json;
+  version: number;
+}
+
 export interface Finding {
   channel: string | null;
   clientId: string;
@@ -244,6 +253,8 @@ export interface Fuel {
   createdAt: Generated<Timestamp>;
   id: Generated<string>;
   name: string;
+  specification: Generated<Json>;
+  version: Generated<number>;
 }
 
 export interface FuelBatch {
@@ -254,6 +265,15 @@ export interface FuelBatch {
   id: Generated<string>;
   properties: Generated<Json>;
   version: Generated<number>;
+}
+
+export interface FuelBatchVersion {
+  clientId: string | null;
+  createdAt: Generated<Timestamp>;
+  createdBy: string | null;
+  fuelBatchId: string;
+  properties: Json;
+  version: number;
 }
 
 export interface Idempotency {
@@ -448,11 +468,13 @@ export interface DB {
   client: Client;
   counter: Counter;
   engine: Engine;
+  engineVersion: EngineVersion;
   finding: Finding;
   flag: Flag;
   follow: Follow;
   fuel: Fuel;
   fuelBatch: FuelBatch;
+  fuelBatchVersion: FuelBatchVersion;
   idempotency: Idempotency;
   "jobs.worker": JobsWorker;
   limitSet: LimitSet;

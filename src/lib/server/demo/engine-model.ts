@@ -54,6 +54,8 @@ export interface Surroundings {
 export interface ModelFuel {
 	lhvMjKg: number;
 	afrStoich: number;
+	/** Share of the usual combustion quality that it reaches; 1 where it is not said. */
+	burn?: number;
 }
 
 export interface Demand {
@@ -214,7 +216,7 @@ export function workingPoint(
 	const trapped = engine.trapping ? lineAt(engine.trapping, speedRpm) : 1;
 
 	const fuelKw = (fuelFlowKgH * fuel.lhvMjKg) / 3.6;
-	const indicatedKw = fuelKw * trapped * indicatedEfficiency(engine, speedRpm, lambda);
+	const indicatedKw = fuelKw * trapped * indicatedEfficiency(engine, speedRpm, lambda) * (fuel.burn ?? 1);
 	const lossKpa = frictionKpa(engine, speedRpm, plenum.kpa) + pumpingKpa(engine, air, speedRpm, plenum);
 	// Mean pressure times swept volume per second, kPa·L/s = W.
 	const lossKw = (lossKpa * engine.displacementL * speedRpm) / (60 * nR) / 1000;

@@ -1,5 +1,5 @@
 import type { Deps } from '../deps';
-import { addBookings } from './bookings';
+import { addBookings, addClosures } from './bookings';
 import { DEMO_PASSWORD } from './lab/people';
 import { addClients, addEngines, addLab } from './masters';
 import { addCustomers, addStaff, castOf } from './people';
@@ -54,7 +54,9 @@ async function seed(deps: Deps, say: (line: string) => void, patienceMs: number)
 	await addLab(deps, cast);
 	await addEngines(deps, cast);
 	say('Demo lab: people, cells, fuels, limits, engines and builds are in.');
+	await addClosures(deps, cast, begun);
 	const bookings = await addBookings(deps, cast, begun);
+	say('Demo lab: a year of bookings is in.');
 	const seeding = { deps, cast, begun, bookings, say };
 	const sent = await sendRuns(seeding);
 	const left = await reviewRuns(seeding, sent, patienceMs);

@@ -1,13 +1,14 @@
 import { tableValue } from '$lib/domain/limits/judge';
 import { batchAfrStoich } from '$lib/domain/formulas/fuel';
 import type { ModelFuel } from './engine-model';
-import { DEMO_CELLS } from './lab/cells';
+import { ease } from './ease';
+import { DEMO_CELLS, TORQUE_READS } from './lab/cells';
 import type { DemoEngine } from './lab/engine';
 import { DEMO_ENGINES, modelOf } from './lab/engines';
-import { DEMO_BATCHES } from './lab/fuels';
+import { BURNS, DEMO_BATCHES } from './lab/fuels';
 import { ENERGY_FLOW_TABLE } from './lab/limits';
 import type { DemoRun } from './lab/run';
-import { ease, electricalProfile, steadyProfile, sweepProfile, type SweepPlan } from './profiles';
+import { electricalProfile, steadyProfile, sweepProfile, type SweepPlan } from './profiles';
 import { seededRandom } from './random';
 import { asInstalled, pointAt, record, sweepTruth, type Bench, type Profile, type Truth } from './rig';
 import { writeTraceFile } from './trace-file';
@@ -36,7 +37,7 @@ function fuelOf(code: string): ModelFuel {
 	const batch = DEMO_BATCHES.find((one) => one.code === code);
 	const afrStoich = batch && batchAfrStoich(batch)?.value;
 	if (!batch || afrStoich === undefined) throw new Error(`no demo batch ${code} with a composition`);
-	return { lhvMjKg: batch.lhvMjKg.value, afrStoich };
+	return { lhvMjKg: batch.lhvMjKg.value, afrStoich, burn: BURNS[code] ?? 1 };
 }
 
 /** The bench of a run; the engine as it was that day. */
@@ -51,6 +52,7 @@ function benchOf(run: DemoRun): Bench {
 		fuel: fuelOf(run.batch),
 		inertiaKgM2: engine.inertiaKgM2 + (cell.shaftInertiaKgM2 ?? 0) + rotor,
 		torqueRangeNm: cell.absorber.maxTorqueNm,
+		torqueReads: TORQUE_READS[cell.code] ?? 1,
 		storeMj: STORE_MJ
 	};
 }
@@ -60,7 +62,7 @@ export function runFile(run: DemoRun): RunFile {
 	const bench = benchOf(run);
 	const told: Omit<RunFile, 'bytes'> = { truth: {}, points: [], spans: [] };
 	const profile = profileOf(run, bench, told);
-	const recording = record(bench, profile, run.rateHz, seededRandom(run.filename));
+	const recording = record(bench, profile, run.rateHz, seededRandom(run.filename), run.disturbances);
 	return { bytes: writeTraceFile(recording, run.columns, run.dialect), ...told };
 }
 
@@ -81,7 +83,14 @@ function profileOf({ test }: DemoRun, bench: Bench, told: Omit<RunFile, 'bytes'>
 		case 'steady':
 			told.points = test.points.map((point) => {
 				const { torqueNm, powerKw, fuelFlowKgH, bte } = pointAt(bench, { ...point, rateRpmS: 0 });
-				return { speed: point.speedRpm, torque: torqueNm, power: powerKw, fuel_flow: fuelFlowKgH, bte };
+				const reads = bench.torqueReads ?? 1;
+				return {
+					speed: point.speedRpm,
+					torque: reads * torqueNm,
+					power: reads * powerKw,
+					fuel_flow: fuelFlowKgH,
+					bte: reads * bte
+				};
 			});
 			return steadyProfile(test.points, test.holdS);
 		case 'electrical': {

@@ -5,18 +5,21 @@ import {
 	acceptRun,
 	addLogLine,
 	closeRun,
+	flagRun,
 	getRun,
 	listLogLines,
 	listRuns,
+	NewFlag,
+	NewLogLine,
 	NewRun,
 	openRun,
 	voidRun,
 	type RunDetail
 } from '../runs';
 import { receiveTrace } from '../traces';
-import { labTime } from './calendar';
-import type { DemoRun } from './lab/run';
-import { DEMO_RUNS } from './lab/runs';
+import { momentOf } from './calendar';
+import type { DemoRecord, DemoRun } from './lab/run';
+import { DEMO_RECORDS, DEMO_RUNS } from './lab/runs';
 import type { Cast } from './people';
 import { runFile } from './run-file';
 
@@ -24,6 +27,9 @@ const MINUTE_MS = 60_000;
 /** A record is closed so long after its start, and reviewed so long after that. */
 const CLOSED_AFTER_MS = 25 * MINUTE_MS;
 const REVIEWED_AFTER_MS = 90 * MINUTE_MS;
+/** Traces between two lines of progress. */
+const SAID_EVERY = 6;
+const ALL = 500;
 
 export interface Seeding {
 	deps: Deps;
@@ -34,45 +40,46 @@ export interface Seeding {
 	say: (line: string) => void;
 }
 
+type Plan = DemoRecord & Partial<DemoRun>;
+
 interface SentRun {
-	plan: DemoRun;
+	plan: Plan;
 	startedAt: Date;
 	number: string;
 }
 
 const at = (deps: Deps, when: Date): Deps => ({ ...deps, now: () => when });
 
-/** Opens what is missing, sends its trace behind every user's work, writes its log and closes it. */
+/** Opens what is missing, sends its trace behind every user's work, writes its log and closes it; oldest first. */
 export async function sendRuns(seeding: Seeding): Promise<SentRun[]> {
 	const { deps, cast, begun, say } = seeding;
-	const known = (await listRuns(deps, cast('manager'), { limit: 500 })).items;
+	const known = new Map<string, string>();
+	for (let cursor: string | undefined, more = true; more;) {
+		const page = await listRuns(deps, cast('manager'), { limit: ALL, ...(cursor ? { cursor } : {}) });
+		for (const { build, startedAt, number } of page.items)
+			known.set(`${build} ${new Date(startedAt).getTime()}`, number);
+		cursor = page.nextCursor ?? undefined;
+		more = cursor !== undefined;
+	}
+	const plans = [...DEMO_RUNS, ...DEMO_RECORDS]
+		.map((plan: Plan) => ({ plan, startedAt: momentOf(begun, deps.config.labTimeZone, plan.started) }))
+		.sort((a, b) => a.startedAt.getTime() - b.startedAt.getTime());
 	const sent: SentRun[] = [];
-	for (const plan of DEMO_RUNS) {
-		const startedAt = labTime(begun, deps.config.labTimeZone, plan.workday, plan.clock);
-		const same = known.find(
-			(run) =>
-				run.client === plan.client &&
-				run.build === plan.build &&
-				new Date(run.startedAt).getTime() === startedAt.getTime()
-		);
-		const run = same
-			? await getRun(deps, cast('manager'), same.number)
-			: await open(seeding, plan, startedAt);
-		if (run.traces.length === 0 && run.state === 'open')
-			await receiveTrace(deps, cast(plan.loggedBy), run.number, {
-				filename: plan.filename,
-				body: Readable.from([runFile(plan).bytes]),
-				declaredBytes: null,
-				background: true
-			});
-		if (run.state === 'open') await writeUp(seeding, plan, startedAt, run.number);
+	let traces = 0;
+	for (const { plan, startedAt } of plans) {
+		const same = known.get(`${plan.build} ${startedAt.getTime()}`);
+		const run = same ? await getRun(deps, cast('manager'), same) : await open(seeding, plan, startedAt);
+		if (run.state === 'open') await record(seeding, plan, startedAt, run);
 		sent.push({ plan, startedAt, number: run.number });
-		say(`Demo lab: ${sent.length} of ${DEMO_RUNS.length} traces sent`);
+		if (isMeasured(plan) && (++traces % SAID_EVERY === 0 || traces === DEMO_RUNS.length))
+			say(`Demo lab: ${traces} of ${DEMO_RUNS.length} traces sent`);
 	}
 	return sent;
 }
 
-async function open({ deps, cast, bookings }: Seeding, plan: DemoRun, startedAt: Date): Promise<RunDetail> {
+const isMeasured = (plan: Plan): plan is DemoRun => plan.filename !== undefined;
+
+async function open({ deps, cast, bookings }: Seeding, plan: Plan, startedAt: Date): Promise<RunDetail> {
 	return openRun(
 		deps,
 		cast(plan.loggedBy),
@@ -92,44 +99,69 @@ async function open({ deps, cast, bookings }: Seeding, plan: DemoRun, startedAt:
 	);
 }
 
-async function writeUp(
-	{ deps, cast }: Seeding,
-	plan: DemoRun,
-	startedAt: Date,
-	number: string
-): Promise<void> {
+/** Trace, log and flags of an open record, as far as they are not there yet; then its end. */
+async function record({ deps, cast }: Seeding, plan: Plan, startedAt: Date, run: RunDetail): Promise<void> {
+	const { number } = run;
+	const who = cast(plan.loggedBy);
+	if (isMeasured(plan) && run.traces.length === 0)
+		await receiveTrace(deps, who, number, {
+			filename: plan.filename,
+			body: Readable.from([runFile(plan).bytes]),
+			declaredBytes: null,
+			background: true
+		});
+	await writeLog(deps, cast, plan, startedAt, number);
+	for (const { by, severity, reason, span } of plan.flags ?? []) {
+		if (run.flags.some(({ message }) => message === reason)) continue;
+		const flag = NewFlag.parse({ severity, reason, ...(span ? { from: span[0], to: span[1] } : {}) });
+		await flagRun(deps, cast(by), number, flag, null, { asHistory: true });
+	}
+	if (plan.outcome.state !== 'open')
+		await closeRun(at(deps, new Date(startedAt.getTime() + CLOSED_AFTER_MS)), who, number, null);
+}
+
+async function writeLog(deps: Deps, cast: Cast, plan: Plan, startedAt: Date, number: string): Promise<void> {
 	const who = cast(plan.loggedBy);
 	const written = await listLogLines(deps, who, number);
-	for (const { minute, text } of plan.log)
-		if (!written.some((line) => line.text === text))
-			await addLogLine(deps, who, number, { text, at: new Date(startedAt.getTime() + minute * MINUTE_MS) });
-	await closeRun(at(deps, new Date(startedAt.getTime() + CLOSED_AFTER_MS)), who, number, null);
+	for (const { minute, text, corrects } of plan.log) {
+		if (written.some((line) => line.text === text)) continue;
+		const earlier = corrects && written.find((line) => line.text === corrects.text);
+		const line = NewLogLine.parse({
+			text,
+			at: new Date(startedAt.getTime() + minute * MINUTE_MS).toISOString(),
+			...(earlier ? { supersedes: earlier.id, reason: corrects.reason } : {})
+		});
+		written.push(await addLogLine(deps, who, number, line));
+	}
 }
 
 const isComputed = (run: RunDetail) =>
 	run.traces.every(({ state }) => state !== 'received' && state !== 'processing');
 
 /**
- * Accepts and voids as planned, each when its figures are there: nobody reviews what is not computed yet.
- * @returns how many still wait for their figures when the time is over
+ * Accepts and voids as planned, each when its figures are there: nobody reviews what is not computed yet. They are computed in
+ * the order in which they were sent, so that only the next one need be looked at.
+ * @returns how many were left when the time was over
  */
 export async function reviewRuns(
-	seeding: Seeding,
+	{ deps, cast }: Seeding,
 	sent: readonly SentRun[],
 	patienceMs: number
 ): Promise<number> {
-	const { deps, cast } = seeding;
-	let waiting = [...sent];
-	for (const until = performance.now() + patienceMs; ; await sleep(500)) {
-		const still: SentRun[] = [];
-		for (const one of waiting) {
-			const run = await getRun(deps, cast('manager'), one.number);
-			if (!isComputed(run)) still.push(one);
-			else if (run.state === 'closed') await review(deps, cast, one);
-		}
-		waiting = still;
-		if (waiting.length === 0 || performance.now() > until) return waiting.length;
+	const until = performance.now() + patienceMs;
+	let left = 0;
+	for (const one of sent) {
+		let run = await getRun(deps, cast('manager'), one.number);
+		for (
+			;
+			!isComputed(run) && performance.now() < until;
+			run = await getRun(deps, cast('manager'), one.number)
+		)
+			await sleep(300);
+		if (!isComputed(run)) left++;
+		else if (run.state === 'closed') await review(deps, cast, one);
 	}
+	return left;
 }
 
 async function review(deps: Deps, cast: Cast, { plan, startedAt, number }: SentRun): Promise<void> {

@@ -4,7 +4,15 @@ import type { Trx } from '../db';
 
 /** Every task the worker knows, with the shape of its payload: it is parsed again when it runs, since older code may have queued it. */
 export const JOBS = {
-	'trace.process': { payload: z.object({ clientId: z.uuid(), traceId: z.uuid() }), attempts: 5 },
+	'trace.process': {
+		payload: z.object({
+			clientId: z.uuid(),
+			traceId: z.uuid(),
+			/** Of a run that is entered as history: nobody is mailed about its flags. */
+			quiet: z.boolean().optional()
+		}),
+		attempts: 5
+	},
 	'mail.notify': {
 		payload: z.object({
 			clientId: z.uuid(),

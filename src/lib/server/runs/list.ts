@@ -101,18 +101,25 @@ export async function listRuns(
 			all = all.where('r.buildId', '=', (await resolve(trx, 'build', query.build, { field: 'build' })).id);
 		if (query.cell)
 			all = all.where('r.cellId', '=', (await resolve(trx, 'cell', query.cell, { field: 'cell' })).id);
+		if (query.fuelBatch)
+			all = all.where(
+				'r.fuelBatchId',
+				'=',
+				(await resolve(trx, 'fuel_batch', query.fuelBatch, { field: 'fuelBatch' })).id
+			);
 		if (query.state) all = all.where('r.state', '=', query.state);
-		if (query.flagged)
-			all = all.where((eb) =>
-				eb.exists(
+		if (query.flagged !== undefined)
+			all = all.where((eb) => {
+				const isFlagged = eb.exists(
 					eb
 						.selectFrom('flag as g')
 						.leftJoin('reduction as d', 'd.id', 'g.reductionId')
 						.whereRef('g.runId', '=', 'r.id')
 						.where((or) => or.or([or('g.reductionId', 'is', null), or('d.supersededAt', 'is', null)]))
 						.select('g.id')
-				)
-			);
+				);
+				return query.flagged ? isFlagged : eb.not(isFlagged);
+			});
 		if (query.cursor) {
 			const [at, id] = readCursor(query.cursor);
 			all = all.where(

@@ -114,7 +114,9 @@ export async function flagRun(
 	who: Principal,
 	ref: string,
 	input: z.output<typeof NewFlag>,
-	ifMatch: number | null
+	ifMatch: number | null,
+	/** Entering what has happened already: nobody is mailed. */
+	{ asHistory = false }: { asHistory?: boolean } = {}
 ): Promise<RunDetail> {
 	if ((input.from === undefined) !== (input.to === undefined))
 		throw wrongField('to', 'give both from and to, or neither.');
@@ -146,12 +148,13 @@ export async function flagRun(
 			clientId: run.clientId,
 			after: input
 		});
-		await enqueue(
-			trx,
-			'mail.notify',
-			{ clientId: run.clientId, event: 'run.flagged', subjectId: run.id, revision: run.version + 1 },
-			`run.flagged:${run.id}:${run.version + 1}`
-		);
+		if (!asHistory)
+			await enqueue(
+				trx,
+				'mail.notify',
+				{ clientId: run.clientId, event: 'run.flagged', subjectId: run.id, revision: run.version + 1 },
+				`run.flagged:${run.id}:${run.version + 1}`
+			);
 		return readRun(trx, run.id);
 	});
 }

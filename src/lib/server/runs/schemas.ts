@@ -152,6 +152,7 @@ export const RunQuery = z.object({
 	client: fields.ref.optional(),
 	build: fields.ref.optional(),
 	cell: fields.ref.optional(),
+	fuelBatch: fields.ref.optional(),
 	state: z.enum(['open', 'closed', 'accepted', 'voided']).optional(),
 	flagged: z.stringbool().optional()
 });

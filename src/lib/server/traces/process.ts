@@ -22,7 +22,7 @@ interface TraceRow {
  * From the stored original to figures. Safe to run twice and to be killed anywhere: what it writes appears in one
  * transaction, and the columnar object has a name made from what it holds.
  */
-export async function processTrace(deps: Deps, { traceId }: JobData<'trace.process'>): Promise<void> {
+export async function processTrace(deps: Deps, { traceId, quiet }: JobData<'trace.process'>): Promise<void> {
 	const trace = await writing(deps.pools, SYSTEM, async (trx) => {
 		return trx
 			.updateTable('trace')
@@ -37,7 +37,7 @@ export async function processTrace(deps: Deps, { traceId }: JobData<'trace.proce
 	if (!createHash('sha256').update(bytes).digest().equals(trace.sha256))
 		throw new Error(`object ${trace.objectKey} is not the file that was received: its SHA-256 differs`);
 	const analysed = analyseFile(bytes, told.context, { name: trace.filename });
-	if (analysed.state === 'ready') await keepFigures(deps, trace, told, analysed);
+	if (analysed.state === 'ready') await keepFigures(deps, trace, told, analysed, quiet ?? false);
 	else await keepRefusal(deps, trace, analysed);
 }
 
@@ -57,7 +57,13 @@ async function keepRefusal(
 	});
 }
 
-async function keepFigures(deps: Deps, trace: TraceRow, told: TraceContext, ready: Ready): Promise<void> {
+async function keepFigures(
+	deps: Deps,
+	trace: TraceRow,
+	told: TraceContext,
+	ready: Ready,
+	quiet: boolean
+): Promise<void> {
 	const columnar = encodeColumnar(ready.trace);
 	const columnarKey = `clients/${trace.clientId}/columnar/${trace.id}/${createHash('sha256').update(columnar).digest('hex')}`;
 	if ((await deps.store.size(columnarKey)) !== columnar.byteLength)
@@ -111,7 +117,7 @@ async function keepFigures(deps: Deps, trace: TraceRow, told: TraceContext, read
 			.where('id', '=', trace.runId)
 			.returning('version')
 			.executeTakeFirstOrThrow();
-		if (trace.isPrimary && ready.flags.length)
+		if (!quiet && trace.isPrimary && ready.flags.length)
 			await enqueue(
 				trx,
 				'mail.notify',

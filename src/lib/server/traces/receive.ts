@@ -12,7 +12,7 @@ export interface Received {
 }
 
 interface TraceUpload extends Upload {
-	/** Demo data waits behind every user's work. */
+	/** Demo data waits behind every user's work, and nobody is mailed about its flags. */
 	background?: boolean;
 }
 
@@ -85,9 +85,15 @@ async function record(
 			clientId,
 			after: { filename, sha256: spooled.sha256.toString('hex'), sizeBytes: spooled.sizeBytes }
 		});
-		await enqueue(trx, 'trace.process', { clientId, traceId: id }, id, {
-			priority: upload.background ? PRIORITY.background : PRIORITY.user
-		});
+		await enqueue(
+			trx,
+			'trace.process',
+			{ clientId, traceId: id, ...(upload.background ? { quiet: true } : {}) },
+			id,
+			{
+				priority: upload.background ? PRIORITY.background : PRIORITY.user
+			}
+		);
 		return { id, state: 'received' };
 	});
 }

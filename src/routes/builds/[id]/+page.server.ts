@@ -1,20 +1,29 @@
 import { fail } from '@sveltejs/kit';
 import { z } from 'zod';
-import { changeBuild, followBuild, getBuild } from '$lib/server/builds';
+import { listAttachments } from '$lib/server/attachments';
+import { buildHistory, changeBuild, followBuild, getBuild, getBuildRecord } from '$lib/server/builds';
 import { listRuns } from '$lib/server/runs';
 import { pageData, personMay } from '$lib/server/web';
 import type { Actions, PageServerLoad } from './$types';
 
-export const load: PageServerLoad = async ({ locals, params, url }) => {
+export const load: PageServerLoad = async ({ locals, params, url, depends }) => {
 	const who = personMay(locals, 'engine.read');
 	const { deps } = locals;
+	depends('app:build');
 	return pageData({ locals }, async () => {
 		const build = await getBuild(deps, who, params.id);
-		const [parent, runs] = await Promise.all([
+		const [parent, runs, record, history, attachments] = await Promise.all([
 			build.parentId ? getBuild(deps, who, build.parentId) : null,
-			listRuns(deps, who, { build: build.id, limit: 25, cursor: url.searchParams.get('cursor') ?? undefined })
+			listRuns(deps, who, {
+				build: build.id,
+				limit: 25,
+				cursor: url.searchParams.get('cursor') ?? undefined
+			}),
+			getBuildRecord(deps, who, build.id),
+			buildHistory(deps, who, build.id),
+			listAttachments(deps, who, { kind: 'build', ref: build.id })
 		]);
-		return { build, parent, runs };
+		return { build, parent, runs, record, history, attachments };
 	});
 };
 

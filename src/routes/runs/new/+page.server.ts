@@ -6,11 +6,14 @@ import { CORRECTIONS, RUN_KINDS } from '$lib/domain/model';
 import { wallClock } from '$lib/domain/time';
 import { listBuilds } from '$lib/server/builds';
 import { listCells } from '$lib/server/cells';
+import { listClients } from '$lib/server/clients';
 import { listFuelBatches } from '$lib/server/fuels';
 import { listLimitSets } from '$lib/server/limits';
+import { benchNeeds, makeBench, readRunStart } from '$lib/server/run-start';
 import { NewRun, openRun } from '$lib/server/runs';
 import { labInstant, pageData, personMay, refused } from '$lib/server/web';
 import type { Actions, PageServerLoad } from './$types';
+import { BenchForm } from './bench-form';
 
 const optionalNumber = (low: number, high: number, unit: string) =>
 	z
@@ -26,6 +29,7 @@ const RunForm = z.object({
 	cell: z.string().min(1, 'Choose the cell.'),
 	fuelBatch: z.string().min(1, 'Choose the fuel batch.'),
 	kind: z.enum(RUN_KINDS).default('power_sweep'),
+	booking: z.string().default(''),
 	/** Wall clock of the lab, as `datetime-local` gives it. */
 	startedAt: z.string().regex(/^\d{4}-\d\d-\d\dT\d\d:\d\d(:\d\d)?$/, 'Give the date and time of the start.'),
 	limitSet: z.string().default(''),
@@ -36,23 +40,48 @@ const RunForm = z.object({
 	humidityPct: optionalNumber(0, 100, '% RH')
 });
 
+const LISTED = 200;
+
 export const load: PageServerLoad = async ({ locals, url }) => {
 	const who = personMay(locals, 'run.open');
 	const { deps } = locals;
 	return pageData({ locals }, async () => {
-		const [builds, cells, batches, limitSets] = await Promise.all([
-			listBuilds(deps, who, { limit: 200 }),
+		const asked = (name: string) => url.searchParams.get(name) || undefined;
+		const [builds, cells, batches, limitSets, clients, start] = await Promise.all([
+			listBuilds(deps, who, { limit: LISTED }),
 			listCells(deps, who),
-			listFuelBatches(deps, who, { limit: 200 }),
-			listLimitSets(deps, who)
+			listFuelBatches(deps, who, { limit: LISTED }),
+			listLimitSets(deps, who),
+			listClients(deps, who),
+			readRunStart(deps, who, {
+				booking: asked('booking'),
+				build: asked('build'),
+				cell: asked('cell'),
+				fuelBatch: asked('fuelBatch')
+			})
 		]);
-		const start = {
-			build: url.searchParams.get('build') ?? '',
-			cell: url.searchParams.get('cell') ?? '',
+		const given = {
+			build: start.build ?? '',
+			cell: start.cell ?? '',
+			fuelBatch: start.fuelBatch ?? '',
+			booking: start.booking?.id ?? '',
+			...(start.kind ? { kind: start.kind } : {}),
 			startedAt: wallClock(deps.now(), deps.config.labTimeZone)
 		};
 		return {
-			form: await superValidate(start, zod4(RunForm), { errors: false }),
+			form: await superValidate(given, zod4(RunForm), { errors: false, id: 'record' }),
+			bench: await superValidate(clients.length === 1 ? { client: clients[0]!.code } : {}, zod4(BenchForm), {
+				errors: false,
+				id: 'bench'
+			}),
+			given: { build: given.build, cell: given.cell, fuelBatch: given.fuelBatch },
+			start,
+			needs: benchNeeds(who, {
+				clients: clients.length,
+				batches: batches.items.length,
+				cells: cells.length
+			}),
+			clients: clients.map(({ code, name }) => ({ code, name })),
 			builds: builds.items.map(({ id, client, number, title, state }) => ({
 				id,
 				client,
@@ -74,11 +103,11 @@ export const load: PageServerLoad = async ({ locals, url }) => {
 };
 
 export const actions: Actions = {
-	default: async ({ request, locals }) => {
+	open: async ({ request, locals }) => {
 		const who = personMay(locals, 'run.open');
-		const form = await superValidate(request, zod4(RunForm));
+		const form = await superValidate(request, zod4(RunForm), { id: 'record' });
 		if (!form.valid) return fail(400, { form });
-		const { startedAt, limitSet, net, barometerKpa, temperatureC, humidityPct, ...rest } = form.data;
+		const { startedAt, limitSet, booking, net, barometerKpa, temperatureC, humidityPct, ...rest } = form.data;
 		let number: string;
 		try {
 			const run = await openRun(
@@ -88,6 +117,7 @@ export const actions: Actions = {
 					...rest,
 					startedAt: labInstant(locals.deps.config, startedAt, 'startedAt').toISOString(),
 					limitSet: limitSet || null,
+					booking: booking || null,
 					net: net === '' ? null : net === 'net',
 					ambient: Object.fromEntries(
 						Object.entries({ barometerKpa, temperatureC, humidityPct }).filter(([, value]) => value !== null)
@@ -99,5 +129,28 @@ export const actions: Actions = {
 			return refused(form, cause);
 		}
 		redirect(303, `/runs/${encodeURIComponent(number)}`);
+	},
+
+	prepare: async ({ request, locals }) => {
+		const who = personMay(locals, 'run.open');
+		personMay(locals, 'engine.write');
+		const form = await superValidate(request, zod4(BenchForm), { id: 'bench' });
+		if (!form.valid) return fail(400, { form });
+		let chosen: URLSearchParams;
+		try {
+			const made = await makeBench(locals.deps, who, {
+				...form.data,
+				displacementL: form.data.displacementL ?? 0,
+				strokesPerCycle: Number(form.data.strokesPerCycle)
+			});
+			chosen = new URLSearchParams({
+				build: made.build.id,
+				...(made.cell ? { cell: made.cell.id } : {}),
+				...(made.fuelBatch ? { fuelBatch: made.fuelBatch.id } : {})
+			});
+		} catch (cause) {
+			return refused(form, cause);
+		}
+		redirect(303, `/runs/new?${chosen.toString()}`);
 	}
 };

@@ -4,6 +4,9 @@ import type { NewCell } from '../../cells';
 const weekdays = [1, 2, 3, 4, 5];
 const open = (days: readonly number[], from: string, to: string) => days.map((day) => ({ day, from, to }));
 
+/** What the torque chain of a cell shows over what is there, where that is not 1. Nobody in the lab knows it yet. */
+export const TORQUE_READS: Readonly<Record<string, number>> = { EC1: 1.015 };
+
 /** Four test cells: two that only brake, two that can drive. */
 export const DEMO_CELLS: readonly z.input<typeof NewCell>[] = [
 	{
@@ -52,7 +55,7 @@ export const DEMO_CELLS: readonly z.input<typeof NewCell>[] = [
 		torqueAt: 'flange',
 		rotorInertiaKgM2: 0.46,
 		shaftInertiaKgM2: 0.015,
-		fuels: ['E85', 'PETROL-E10', 'SYN-98'],
+		fuels: ['E85', 'PETROL-E5', 'PETROL-E10', 'SYN-98'],
 		rigUpMinutes: 60,
 		rigDownMinutes: 45,
 		openingHours: [...open(weekdays, '06:00', '22:00'), ...open([6], '07:00', '13:00')]

@@ -83,7 +83,6 @@ export const COLUMNS = {
 		column('time', 'time', 's', 3),
 		column('speed', 'speed', 'rpm', 1),
 		column('torque', 'torque', 'Nm', 2),
-		column('fuel_flow', 'fuel mass flow', 'kg/h', 4),
 		column('electrical_power', 'electrical power', 'kW', 3),
 		column('battery_voltage', 'battery voltage', 'V', 2),
 		column('battery_current', 'battery current', 'A', 2),

@@ -73,6 +73,44 @@ export const DEMO_LIMIT_SETS: readonly z.input<typeof NewLimitSet>[] = [
 		]
 	},
 	{
+		code: 'LAB-DIESEL',
+		title: 'Engine safety, diesel, and fuel as ordered',
+		rules: [
+			{
+				title: 'Coolant temperature',
+				subject: { channel: 'coolant_temp' },
+				relation: 'at_most',
+				limit: 108,
+				holdS: 2,
+				severity: 'breach'
+			},
+			{
+				title: 'Oil pressure',
+				subject: { channel: 'oil_pressure' },
+				relation: 'at_least',
+				limit: 150,
+				holdS: 0.5,
+				severity: 'breach'
+			},
+			{
+				title: 'Net calorific value of the fuel',
+				subject: { fuel: 'lhvMjKg' },
+				relation: 'at_least',
+				limit: 42.2,
+				holdS: 0,
+				severity: 'review'
+			},
+			{
+				title: 'Density of the fuel',
+				subject: { fuel: 'densityKgM3' },
+				relation: 'between',
+				limit: [820, 845],
+				holdS: 0,
+				severity: 'review'
+			}
+		]
+	},
+	{
 		client: 'TSL',
 		code: 'TSL-ENERGY',
 		title: 'Energy-flow limit of the fuel programme',

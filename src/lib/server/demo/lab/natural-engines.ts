@@ -75,7 +75,8 @@ export const sprint: DemoEngine = {
 				{ name: 'Intake runners', value: '240 mm' },
 				{ name: 'Compression ratio', value: '12.4' }
 			],
-			state: 'in_preparation'
+			state: 'in_preparation',
+			model: { compressionRatio: 12.4 }
 		}
 	]
 };
@@ -138,6 +139,20 @@ export const ultralight: DemoEngine = {
 			parts: [
 				{ name: 'Exhaust', value: 'E-14, header 365 mm' },
 				{ name: 'Carburettors', value: '2 × 36 mm' },
+				{ name: 'Propeller side', value: 'bare crankshaft' }
+			],
+			state: 'ready',
+			model: {
+				breathing: { best: 0.66, atRpm: 5500, fall: 0.3, tuned: [{ atRpm: 5450, widthRpm: 950, gain: 0.1 }] }
+			}
+		},
+		{
+			number: 'LH-58.3',
+			title: 'Longer header, leaner mid-range needles',
+			parent: 'LH-58.2',
+			parts: [
+				{ name: 'Exhaust', value: 'E-14, header 365 mm' },
+				{ name: 'Carburettors', value: '2 × 36 mm, needles one notch leaner' },
 				{ name: 'Propeller side', value: 'bare crankshaft' }
 			],
 			state: 'in_preparation'

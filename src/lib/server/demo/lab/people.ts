@@ -19,9 +19,13 @@ export interface DemoPerson {
 	client?: string;
 }
 
-const staff = (role: Exclude<Role, 'client'>, name: string): DemoPerson => ({
-	key: role,
-	email: `${role}@fellmoor.example`,
+const staff = (
+	role: Exclude<Role, 'client'>,
+	name: string,
+	more?: { key: string; mail: string }
+): DemoPerson => ({
+	key: more?.key ?? role,
+	email: `${more?.mail ?? role}@fellmoor.example`,
 	name,
 	role
 });
@@ -33,13 +37,15 @@ const customer = (client: string, given: string, family: string, house: string):
 	client
 });
 
-/** Invented people. Staff by their role, one customer for each client by its code. */
+/** Invented people. Staff by their role, two of them for the second shift; one customer for each client by its code. */
 export const DEMO_PEOPLE: readonly DemoPerson[] = [
 	staff('admin', 'Wenna Ostlake'),
 	staff('manager', 'Orrin Haskefell'),
 	staff('engineer', 'Tilda Vexmoor'),
 	staff('builder', 'Bram Quarrowby'),
 	staff('operator', 'Junia Peverstock'),
+	staff('engineer', 'Maud Ellerbarrow', { key: 'engineer2', mail: 'maud' }),
+	staff('operator', 'Corin Thaddlewick', { key: 'operator2', mail: 'corin' }),
 	customer('QMS', 'Merrin', 'Tolgarth', 'quillmere'),
 	customer('BVG', 'Aldous', 'Frindle', 'brackvolt'),
 	customer('LHA', 'Sunniva', 'Corbrake', 'larkhollow'),

@@ -1,6 +1,8 @@
-import type { Correction, RunKind } from '$lib/domain/model';
+import type { Correction, FlagSeverity, RunKind } from '$lib/domain/model';
+import type { Moment } from '../calendar';
 import type { Surroundings } from '../engine-model';
 import type { SetPoint, SweepPlan } from '../profiles';
+import type { Disturbance } from '../rig';
 import type { Dialect, FileColumn } from '../trace-file';
 
 type Test =
@@ -13,9 +15,31 @@ type Test =
 			stretches: { seconds: number; load: number; electricalKw: number }[];
 	  };
 
-export interface DemoRun {
-	/** Also the seed of its noise. */
-	filename: string;
+export type Logger = 'operator' | 'operator2' | 'engineer' | 'engineer2';
+export type Reviewer = 'engineer' | 'engineer2' | 'manager';
+
+export interface DemoLogLine {
+	minute: number;
+	text: string;
+	/** Text of the line that this one puts right, and why. */
+	corrects?: { text: string; reason: string };
+}
+
+export interface HandFlag {
+	by: Logger;
+	severity: FlagSeverity;
+	reason: string;
+	span?: [fromS: number, toS: number];
+}
+
+export type Outcome =
+	| { state: 'accepted' | 'voided'; by: Reviewer; reason?: string }
+	| { state: 'closed' }
+	/** Still running when the lab is begun. */
+	| { state: 'open' };
+
+/** A run's record, with or without a trace. */
+export interface DemoRecord {
 	client: string;
 	build: string;
 	cell: string;
@@ -24,19 +48,25 @@ export interface DemoRun {
 	limitSet: string;
 	correction: Correction;
 	air: Surroundings;
-	/** Working days before the lab's first day, and the clock there. */
-	workday: number;
-	clock: string;
+	started: Moment;
 	/** The slot it was run in; not every run has one. */
 	booking?: string;
-	loggedBy: 'operator' | 'engineer';
-	log: { minute: number; text: string }[];
-	outcome:
-		{ state: 'accepted' | 'voided'; by: 'engineer' | 'manager'; reason?: string } | { state: 'closed' };
+	loggedBy: Logger;
+	log: DemoLogLine[];
+	flags?: HandFlag[];
+	outcome: Outcome;
+}
+
+export interface DemoRun extends DemoRecord {
+	/** Also the seed of its noise. */
+	filename: string;
 	/** What the import must make of the file. */
 	trace: 'ready' | 'needs_map' | 'refused';
+	/** How many rules of its limit set it must cross. */
+	crosses: number;
 	test: Test;
 	rateHz: number;
 	columns: readonly FileColumn[];
 	dialect: Dialect;
+	disturbances?: readonly Disturbance[];
 }

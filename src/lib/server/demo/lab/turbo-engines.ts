@@ -61,12 +61,12 @@ export const generator: DemoEngine = {
 			title: 'Raised compression for E85',
 			parent: 'BV-16.A',
 			parts: [
-				{ name: 'Pistons', value: 'raised crown, compression ratio 11.8' },
+				{ name: 'Pistons', value: 'raised crown, compression ratio 11.7' },
 				{ name: 'Ignition map', value: 'G4' },
 				{ name: 'Injectors', value: '420 g/min' }
 			],
 			state: 'ready',
-			model: { compressionRatio: 11.8 }
+			model: { compressionRatio: 11.7 }
 		}
 	]
 };

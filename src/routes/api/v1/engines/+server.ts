@@ -1,13 +1,16 @@
-import { z } from 'zod';
-import { operation } from '$lib/server/api';
-import { createEngine, EngineView, listEngines, NewEngine } from '$lib/server/engines';
+import { operation, pageOf } from '$lib/server/api';
+import { createEngine, EngineQuery, EngineView, NewEngine, pageEngines } from '$lib/server/engines';
+
+/** Asked without a limit, all come at once. */
+const ALL = 100_000;
 
 export const GET = operation({
 	id: 'listEngines',
-	summary: 'Engines you may see',
+	summary: 'Engines you may see; all of them unless a limit is given',
 	action: 'engine.read',
-	answer: z.object({ items: z.array(EngineView) }),
-	run: async ({ deps, who }) => ({ items: await listEngines(deps, who) })
+	query: EngineQuery,
+	answer: pageOf(EngineView),
+	run: ({ deps, who, query }) => pageEngines(deps, who, { ...query, limit: query.limit ?? ALL })
 });
 
 export const POST = operation({

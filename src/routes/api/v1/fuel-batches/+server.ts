@@ -1,11 +1,17 @@
 import { operation, pageOf, PageQuery } from '$lib/server/api';
-import { createFuelBatch, FuelBatchView, listFuelBatches, NewFuelBatch } from '$lib/server/fuels';
+import {
+	createFuelBatch,
+	FuelBatchQuery,
+	FuelBatchView,
+	listFuelBatches,
+	NewFuelBatch
+} from '$lib/server/fuels';
 
 export const GET = operation({
 	id: 'listFuelBatches',
 	summary: 'Fuel batches of the lab and your own',
 	action: 'lab.read',
-	query: PageQuery,
+	query: PageQuery.extend(FuelBatchQuery.shape),
 	answer: pageOf(FuelBatchView),
 	run: ({ deps, who, query }) => listFuelBatches(deps, who, query)
 });

@@ -1,5 +1,5 @@
 import { operation } from '$lib/server/api';
-import { EngineView, getEngine } from '$lib/server/engines';
+import { ChangedEngine, changeEngine, EngineChange, EngineView, getEngine } from '$lib/server/engines';
 
 export const GET = operation({
 	id: 'getEngine',
@@ -7,4 +7,13 @@ export const GET = operation({
 	action: 'engine.read',
 	answer: EngineView,
 	run: ({ deps, who, params }) => getEngine(deps, who, params.id!)
+});
+
+export const PATCH = operation({
+	id: 'changeEngine',
+	summary: 'Change an engine; figures made before stay until they are computed again',
+	action: 'engine.write',
+	body: EngineChange,
+	answer: ChangedEngine,
+	run: ({ deps, who, params, body, ifMatch }) => changeEngine(deps, who, params.id!, body, ifMatch)
 });

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { partProblems, partsOf, partsText } from './parts';
+import { partProblems, partsOf, partsText } from './parts-text';
 
 const TYPED = 'Camshafts: 264° / 10.2 mm\n\n  Ignition map : G3: road  \nSump';
 

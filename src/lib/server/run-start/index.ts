@@ -1,0 +1,2 @@
+export { benchNeeds, makeBench, NewBench } from './bench';
+export { readRunStart } from './read';

@@ -1,0 +1,2 @@
+export { readToday } from './read';
+export { TodayView, type Today } from './schemas';
