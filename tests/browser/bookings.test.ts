@@ -164,8 +164,7 @@ describe('a slot', () => {
 		await client.keyboard.press('Enter');
 		await tabTo(focused, 'build');
 		await client.keyboard.type(`${build.number} `);
-		await client.keyboard.press('Tab');
-		expect(await focused()).toBe('cell');
+		await tabTo(focused, 'cell');
 		await client.keyboard.type('C1');
 		await client.keyboard.press('Tab');
 		expect(await focused()).toBe('from');
@@ -185,7 +184,7 @@ describe('a slot', () => {
 	});
 
 	async function tabTo(focused: () => Promise<string | null | undefined>, name: string) {
-		for (let steps = 0; steps < 15; steps++) {
+		for (let steps = 0; steps < 40; steps++) {
 			await client.keyboard.press('Tab');
 			if ((await focused()) === name) return;
 		}
@@ -299,6 +298,7 @@ describe('the schedule', () => {
 		await client.waitForURL(/view=week/);
 		await drawn.focus();
 		await client.keyboard.press('Enter');
+		await client.getByRole('dialog', { name: booking }).getByRole('link', { name: 'Open booking' }).click();
 		await client.waitForURL(/\/bookings\/[0-9a-f-]{36}$/);
 		expect(await client.getByRole('heading', { level: 1 }).innerText()).toBe(booking);
 	});

@@ -152,6 +152,23 @@ describe('mail about bookings', () => {
 		expect(letters[0]!.text).toContain('Reason: Night shift is short');
 	});
 
+	it('is silent about a move that was taken back before it was told, and tells the next one', async () => {
+		const { cell, build, client, manager } = await scene(['NO', 'NP']);
+		const { id } = await lab.request(client, cell.code, build.number, hour(26), hour(30));
+		await confirmBooking(lab.deps, manager, id);
+		await delivered();
+		await moveBooking(lab.deps, manager, id, { from: hour(27), to: hour(31) });
+		await moveBooking(lab.deps, manager, id, { from: hour(26), to: hour(30) });
+		expect(await delivered()).toEqual([]);
+		await moveBooking(lab.deps, manager, id, { from: hour(27), to: hour(31) });
+		const told = await delivered();
+		expect(told.map((letter) => letter.to)).toEqual([[client.email]]);
+		const { event } = await mail.calendar(told[0]!);
+		expect(String(event.getFirstPropertyValue('sequence'))).toBe('3');
+		await moveBooking(lab.deps, manager, id, { from: hour(26), to: hour(30) });
+		expect(await delivered()).toHaveLength(1);
+	});
+
 	it('sends no confirmation that was undone before it left, and then no calendar either', async () => {
 		const { cell, build, client, manager } = await scene(['NI', 'NJ']);
 		const { id } = await lab.request(client, cell.code, build.number, hour(26), hour(30));

@@ -6,6 +6,8 @@ interface Call {
 	body?: unknown;
 	/** Address parameters; empty ones are left out. */
 	query?: Record<string, string | number | null | undefined>;
+	/** The version that was seen: the server refuses when it is another by now. */
+	ifMatch?: number;
 	signal?: AbortSignal;
 	/** Kit's `fetch` inside a load; the browser's elsewhere. */
 	fetch?: typeof fetch;
@@ -16,6 +18,7 @@ interface Call {
 export async function callApi(path: string, call: Call = {}): Promise<Response> {
 	const { method = 'GET', body, query = {}, signal, fetch: ask = fetch, accept = 'application/json' } = call;
 	const headers: Record<string, string> = { accept };
+	if (call.ifMatch !== undefined) headers['if-match'] = `"${call.ifMatch}"`;
 	if (body !== undefined) headers['content-type'] = 'application/json';
 	const response = await ask(`/api/v1${path}${queryText(query)}`, {
 		method,

@@ -47,7 +47,10 @@ const TOLD: Record<
 			move: 'booking.move'
 		}
 	},
-	'/bookings/new': { read: 'booking.request', actions: { default: 'booking.request' } },
+	'/bookings/new': {
+		read: 'booking.request',
+		actions: { fit: 'booking.request', request: 'booking.request' }
+	},
 	'/builds': { read: 'engine.read' },
 	'/builds/[id]': {
 		read: 'engine.read',
@@ -101,7 +104,8 @@ const TOLD: Record<
 		actions: { close: 'run.open', accept: 'run.review', void: 'run.review', flag: 'run.flag', log: 'run.log' }
 	},
 	'/runs/new': { read: 'run.open', actions: { open: 'run.open', prepare: 'engine.write' } },
-	'/schedule': { read: 'schedule.read' },
+	'/schedule': { read: 'schedule.read', actions: { move: 'booking.move' } },
+	'/schedule/close': { read: 'closure.write', actions: { default: 'closure.write' } },
 	'/today': { read: 'schedule.read' },
 	'/trends': { read: 'trend.read' }
 };

@@ -11,6 +11,9 @@ const booking = {
 	build: 'B1',
 	buildId: 'id-b',
 	buildTitle: 'As delivered',
+	replaces: null,
+	may: ['move'],
+	version: 3,
 	rigUpMinutes: 60,
 	rigDownMinutes: 0,
 	from: '2026-12-14T08:00:00.000Z',
@@ -55,8 +58,17 @@ it('draws tests on the lab’s clock, with rigging that takes time, and the hour
 		'C2 closed 2026-12-14T11:00 2026-12-14T12:00'
 	]));
 
-it('leads from a test to its booking, and from nothing else anywhere', () =>
-	expect(drawnEntries(schedule, ZONE).flatMap(({ href }) => href ?? [])).toEqual(['/bookings/id-1']));
+it('says what may be done with a test, and keeps its key when it moves', () => {
+	const tests = (of: typeof schedule) => drawnEntries(of, ZONE).filter(({ test }) => test);
+	expect(tests(schedule)).toMatchObject([{ id: 'id-1', test: { may: ['move'], version: 3 } }]);
+	const moved = structuredClone(schedule);
+	Object.assign(moved.cells[0]!.entries[0]!, {
+		from: '2026-12-14T09:00:00.000Z',
+		to: '2026-12-14T13:00:00.000Z'
+	});
+	expect(tests(moved)[0]!.key).toBe(tests(schedule)[0]!.key);
+	expect(tests(moved)[0]!.from).not.toBe(tests(schedule)[0]!.from);
+});
 
 it('still shows what an autumn change turns round on the wall clock', () => {
 	const turned = {

@@ -1,5 +1,4 @@
-import { wallClock } from '$lib/domain/time';
-import { subtractIntervals } from '$lib/domain/scheduling';
+import { subtractIntervals, wallSpan } from '$lib/domain/scheduling';
 
 /** The schedule as the server reads it, as far as it is drawn. */
 interface Span {
@@ -17,8 +16,11 @@ type Entry = Span &
 				build: string;
 				buildId: string;
 				buildTitle: string;
+				replaces: string | null;
 				rigUpMinutes: number;
 				rigDownMinutes: number;
+				may: readonly string[];
+				version: number;
 		  }
 		| { kind: 'taken' }
 		| { kind: 'closed'; id?: string | undefined; title?: string | undefined }
@@ -57,16 +59,23 @@ export interface DrawnEntry {
 	from: string;
 	to: string;
 	title: string;
-	/** Address of the booking. */
-	href: string | null;
+	/** The booking that it is, or belongs to as its rigging; of a closure its id, where this person may know it. */
+	id: string | null;
+	/** Set for a test: what may be known and done before its booking is opened. */
+	test: DrawnTest | null;
+}
+
+export interface DrawnTest {
+	number: string;
+	build: string;
+	client: string;
+	state: 'requested' | 'confirmed' | 'done';
+	replaces: string | null;
+	may: readonly string[];
+	version: number;
 }
 
 const MINUTE_MS = 60_000;
-/** An entry that an autumn change turns round or to nothing on the wall clock is still to be seen. */
-const LEAST_MINUTES = 15;
-
-const laterOnTheWall = (local: string, minutes: number) =>
-	wallClock(new Date(Date.parse(`${local}Z`) + minutes * MINUTE_MS), 'utc');
 
 /** All entries of all cells, earliest first. */
 export function listedEntries(schedule: Schedule): ListedEntry[] {
@@ -105,31 +114,29 @@ export function drawnEntries(schedule: Schedule, zone: string): DrawnEntry[] {
 	const drawn: DrawnEntry[] = [];
 	const draw = (entry: Omit<DrawnEntry, 'from' | 'to' | 'key'>, from: Date, to: Date) => {
 		if (to <= from) return;
-		const start = wallClock(from, zone);
-		const end = wallClock(to, zone);
-		drawn.push({
-			...entry,
-			key: `${entry.cell} ${entry.kind} ${entry.title} ${from.toISOString()}`,
-			from: start,
-			to: end > start ? end : laterOnTheWall(start, LEAST_MINUTES)
-		});
+		// A booking keeps its key when it moves, so that its bar does.
+		const what = entry.id ?? `${entry.cell} ${from.toISOString()}`;
+		drawn.push({ ...entry, key: `${entry.kind} ${what}`, ...wallSpan({ from, to }, zone) });
 	};
 	const spanOf = ({ from, to }: Span) => ({ from: new Date(from), to: new Date(to) });
 	for (const { code: cell, open, entries } of schedule.cells) {
 		for (const shut of subtractIntervals([spanOf(schedule)], open.map(spanOf)))
-			draw({ cell, kind: 'shut', title: '', href: null }, shut.from, shut.to);
+			draw({ cell, kind: 'shut', title: '', id: null, test: null }, shut.from, shut.to);
 		for (const entry of entries) {
 			const { from, to } = spanOf(entry);
 			if (entry.kind !== 'booking') {
-				const title = entry.kind === 'closed' ? (entry.title ?? '') : '';
-				draw({ cell, kind: entry.kind, title, href: null }, from, to);
+				const [title, id] = entry.kind === 'closed' ? [entry.title ?? '', entry.id ?? null] : ['', null];
+				draw({ cell, kind: entry.kind, title, id, test: null }, from, to);
 				continue;
 			}
-			const { number: title, rigUpMinutes, rigDownMinutes } = entry;
+			const { id, number, build, client, state, replaces, may, version, rigUpMinutes, rigDownMinutes } =
+				entry;
+			const test = { number, build, client, state, replaces, may, version };
 			const minutesFrom = (at: Date, minutes: number) => new Date(at.getTime() + minutes * MINUTE_MS);
-			draw({ cell, kind: 'rig_up', title, href: null }, minutesFrom(from, -rigUpMinutes), from);
-			draw({ cell, kind: entry.state, title, href: `/bookings/${entry.id}` }, from, to);
-			draw({ cell, kind: 'rig_down', title, href: null }, to, minutesFrom(to, rigDownMinutes));
+			const rig = { cell, title: number, id, test: null };
+			draw({ ...rig, kind: 'rig_up' }, minutesFrom(from, -rigUpMinutes), from);
+			draw({ cell, kind: state, title: number, id, test }, from, to);
+			draw({ ...rig, kind: 'rig_down' }, to, minutesFrom(to, rigDownMinutes));
 		}
 	}
 	return drawn;

@@ -10,6 +10,7 @@ export {
 	type Need,
 	type Recorded
 } from './day-lane';
+export { droppedSpan, wallSpan } from './drop';
 export { firstFit } from './first-fit';
 export { instantOrDayFromIso } from './instants';
 export {

@@ -13,3 +13,4 @@ export {
 	NewClosure,
 	type Booking
 } from './schemas';
+export { standingOf } from './view';

@@ -6,7 +6,7 @@ import {
 	type OpeningHour,
 	type Remark
 } from '$lib/domain/scheduling';
-import { may, type Principal } from '../access';
+import { may as mayDo, type Principal } from '../access';
 import type { Trx } from '../db';
 import type { Deps } from '../deps';
 import { clashesOf, clashSentence, clashViews, type Clash, type Wish } from './clash';
@@ -58,25 +58,33 @@ function remarksOn(row: BookingRow, clashes: Clash[], zone: string): Remark[] {
 
 /** Managers act on every booking; an engineer on what they asked for themselves; a client's people on their client's. */
 export function mayChange(who: Principal, requestedBy: string): boolean {
-	return may(who, 'booking.decide') || who.role === 'client' || requestedBy === who.personId;
+	return mayDo(who, 'booking.decide') || who.role === 'client' || requestedBy === who.personId;
 }
 
-function actionsOn(row: BookingRow, state: Booking['state'], who: Principal, now: Date): Booking['may'] {
+type Standing = Pick<BookingRow, 'state' | 'during' | 'requestedById'>;
+
+/** How a booking stands now, and what this person may do with it. */
+export function standingOf(row: Standing, who: Principal, now: Date) {
+	const state = shownState(row, now);
+	return { state, may: actionsOn(row, state, who, now) };
+}
+
+function actionsOn(row: Standing, state: Booking['state'], who: Principal, now: Date): Booking['may'] {
 	const open = state === 'requested' || state === 'confirmed';
 	const own = mayChange(who, row.requestedById);
-	const decides = may(who, 'booking.decide') && state === 'requested';
+	const decides = mayDo(who, 'booking.decide') && state === 'requested';
 	return [
 		...(decides && row.during.to > now ? (['confirm'] as const) : []),
 		...(decides ? (['decline'] as const) : []),
-		...(open && own && may(who, 'booking.cancel') ? (['cancel'] as const) : []),
+		...(open && own && mayDo(who, 'booking.cancel') ? (['cancel'] as const) : []),
 		// Anyone who moves bookings may ask for another time of a confirmed slot.
-		...(open && (own || state === 'confirmed') && may(who, 'booking.move') ? (['move'] as const) : [])
+		...(open && (own || state === 'confirmed') && mayDo(who, 'booking.move') ? (['move'] as const) : [])
 	];
 }
 
 function toBooking(row: BookingRow, clashes: Clash[], who: Principal, deps: Deps): Booking {
 	const now = deps.now();
-	const state = shownState(row, now);
+	const { state, may } = standingOf(row, who, now);
 	const ahead = (state === 'requested' || state === 'confirmed') && row.during.to > now;
 	return {
 		id: row.id,
@@ -106,7 +114,7 @@ function toBooking(row: BookingRow, clashes: Clash[], who: Principal, deps: Deps
 		decidedAt: row.decidedAt?.toISOString() ?? null,
 		warnings: ahead ? remarksOn(row, clashes, deps.config.labTimeZone) : [],
 		clashesWith: clashViews(clashes),
-		may: actionsOn(row, state, who, now),
+		may,
 		version: row.version
 	};
 }

@@ -3,7 +3,7 @@ import type { Trx } from '../db';
 import type { Deps } from '../deps';
 import type { JobData } from '../jobs';
 import { bookingFacts, slotHistory, type BookingFacts, type SlotHistory } from './booking-facts';
-import type { CalendarFacts, CalendarMethod } from './calendar';
+import { CalendarFacts, type CalendarMethod } from './calendar';
 import { entitled, managers, type Outgoing } from './outgoing';
 import type { Letter } from './text';
 
@@ -22,9 +22,7 @@ export async function bookingLetters(trx: Trx, deps: Deps, event: Event): Promis
 			return state === 'cancelled' ? [] : toManagers(trx, asked(booking, deps, 'asks for a slot'));
 		case 'booking.moved':
 			if (state === 'requested') return toManagers(trx, asked(booking, deps, 'asks for another time'));
-			return state === 'confirmed'
-				? toAskers(trx, deps, booking, settled(booking, deps, true), 'REQUEST')
-				: [];
+			return state === 'confirmed' ? movedLetters(trx, deps, booking) : [];
 		case 'booking.confirmed':
 			if (state !== 'confirmed') return [];
 			return toAskers(trx, deps, booking, settled(booking, deps, booking.replaces !== null), 'REQUEST');
@@ -59,6 +57,27 @@ async function toAskers(
 	const people = await entitled(trx, slot.requesters, booking.clientId);
 	const facts = calendarFacts(booking, slot, deps);
 	return people.map((recipientId) => ({ recipientId, letter, calendar: { facts, method } }));
+}
+
+/** To those whose calendar has it elsewhere: who was told of neither a move nor its undoing has nothing to learn. */
+async function movedLetters(trx: Trx, deps: Deps, booking: BookingFacts): Promise<Outgoing[]> {
+	const history = await slotHistory(trx, booking.id);
+	const letters = await toAskers(trx, deps, booking, settled(booking, deps, true), 'REQUEST', history);
+	const told = await trx
+		.selectFrom('mail')
+		.select(['recipientId', 'calendar'])
+		.where('subjectId', 'in', history.bookingIds)
+		.where('calendarMethod', '=', 'REQUEST')
+		.orderBy('createdAt')
+		.orderBy('revision')
+		.execute();
+	const placeOf = ({ from, to, location }: CalendarFacts) => `${location} ${+from} ${+to}`;
+	const known = new Map(
+		told.map((row) => [row.recipientId, placeOf(CalendarFacts.parse(JSON.parse(row.calendar!)))])
+	);
+	return letters.filter(
+		({ recipientId, calendar }) => !calendar || known.get(recipientId) !== placeOf(calendar.facts)
+	);
 }
 
 async function cancelledLetters(trx: Trx, deps: Deps, booking: BookingFacts): Promise<Outgoing[]> {

@@ -9,6 +9,7 @@ import {
 	type OpeningHour
 } from '$lib/domain/scheduling';
 import { requireMay, type Principal } from '../access';
+import { standingOf } from '../bookings';
 import { rangeOf, reading, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { wrongField } from '../problem';
@@ -35,7 +36,7 @@ function windowOf(query: ScheduleQueryInput, now: Date, zone: string): Interval 
 	return { from, to };
 }
 
-async function bookingEntries(trx: Trx, within: Interval, now: Date) {
+async function bookingEntries(trx: Trx, who: Principal, within: Interval, now: Date) {
 	const rows = await trx
 		.selectFrom('booking as b')
 		.innerJoin('cell as c', 'c.id', 'b.cellId')
@@ -51,6 +52,7 @@ async function bookingEntries(trx: Trx, within: Interval, now: Date) {
 			'b.kind',
 			'b.buildId',
 			'b.version',
+			'b.requestedBy as requestedById',
 			'cl.code as client',
 			'bu.number as build',
 			'bu.title as buildTitle',
@@ -72,12 +74,12 @@ async function bookingEntries(trx: Trx, within: Interval, now: Date) {
 		.orderBy(sql`lower(b.during)`)
 		.orderBy('b.number')
 		.execute();
-	return rows.map(({ cellId, during, kind, state, ...row }) => ({
+	return rows.map(({ cellId, during, kind, requestedById, ...row }) => ({
 		cellId,
 		entry: {
 			...row,
 			kind: 'booking',
-			state: state === 'confirmed' && during.to <= now ? 'done' : state,
+			...standingOf({ state: row.state, during, requestedById }, who, now),
 			test: kind,
 			from: during.from.toISOString(),
 			to: during.to.toISOString()
@@ -117,7 +119,7 @@ export async function readSchedule(deps: Deps, who: Principal, query: ScheduleQu
 			.select(['id', 'code', 'name', 'colour', 'rigUpMinutes', 'rigDownMinutes', 'openingHours'])
 			.orderBy('code')
 			.execute();
-		const bookings = await bookingEntries(trx, within, now);
+		const bookings = await bookingEntries(trx, who, within, now);
 		const closures = await closureEntries(trx, who, within);
 		const unseen = await takenUnseen(trx, within);
 		return {

@@ -28,6 +28,8 @@ const Entry = z.discriminatedUnion('kind', [
 		...Span,
 		rigUpMinutes: z.number(),
 		rigDownMinutes: z.number(),
+		/** What this person may do with it now. */
+		may: z.array(z.enum(['confirm', 'decline', 'cancel', 'move'])),
 		version: z.number()
 	}),
 	/** Someone else's time, rigging included; neighbouring times are one. */

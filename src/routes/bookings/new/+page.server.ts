@@ -3,10 +3,13 @@ import { superValidate } from 'sveltekit-superforms';
 import { zod4 } from 'sveltekit-superforms/adapters';
 import { z } from 'zod';
 import { RUN_KINDS } from '$lib/domain/model';
+import { wallClock as wallClockText } from '$lib/domain/time';
 import { requestBooking } from '$lib/server/bookings';
 import { listBuilds } from '$lib/server/builds';
 import { listCells } from '$lib/server/cells';
+import { listEngines } from '$lib/server/engines';
 import { listFuelBatches } from '$lib/server/fuels';
+import { findSlots } from '$lib/server/schedule';
 import { labInstant, pageData, personMay, refused } from '$lib/server/web';
 import type { Actions, PageServerLoad } from './$types';
 
@@ -22,17 +25,45 @@ const BookingForm = z.object({
 	to: wallClock('Give the day and time at which the test ends.'),
 	fuelBatch: z.string().default(''),
 	kind: z.enum(['', ...RUN_KINDS]).default(''),
-	purpose: z.string().trim().max(2000, 'At most 2 000 characters.').default('')
+	purpose: z.string().trim().max(2000, 'At most 2 000 characters.').default(''),
+	/** The wish that slots are found for. */
+	notBefore: z.string().default(''),
+	notAfter: z.string().default(''),
+	hours: z.coerce.number({ error: 'Give the length in hours.' }).default(4)
 });
+
+/** What finding slots asks of the same fields: the slot itself is what it is to find. */
+const WishForm = z.object({
+	...BookingForm.shape,
+	cell: z.string().default(''),
+	from: z.string().default(''),
+	to: z.string().default(''),
+	notBefore: wallClock('Give the day and time from which a slot would suit.'),
+	notAfter: wallClock('Give the day and time up to which a slot would suit.'),
+	hours: z.coerce
+		.number({ error: 'Give the length in hours.' })
+		.min(0.25, 'At least a quarter of an hour.')
+		.max(744, 'At most 31 days.')
+});
+
+const WISHED_DAYS = 14;
+const MINUTES_PER_HOUR = 60;
+
+/** A wish to begin with: the two weeks from tomorrow morning on. */
+function wishFrom(now: Date, zone: string) {
+	const day = (days: number) => wallClockText(new Date(now.getTime() + days * 86_400_000), zone).slice(0, 10);
+	return { notBefore: `${day(1)}T06:00`, notAfter: `${day(1 + WISHED_DAYS)}T20:00` };
+}
 
 export const load: PageServerLoad = async ({ locals, url }) => {
 	const who = personMay(locals, 'booking.request');
 	const { deps } = locals;
 	return pageData({ locals }, async () => {
-		const [builds, cells, batches] = await Promise.all([
+		const [builds, cells, batches, engines] = await Promise.all([
 			listBuilds(deps, who, { limit: LISTED }),
 			listCells(deps, who),
-			listFuelBatches(deps, who, { limit: LISTED })
+			listFuelBatches(deps, who, { limit: LISTED }),
+			listEngines(deps, who)
 		]);
 		const asked = (name: string) => url.searchParams.get(name) ?? '';
 		const askedTime = (name: string) => (WALL_CLOCK.test(asked(name)) ? asked(name) : '');
@@ -40,7 +71,8 @@ export const load: PageServerLoad = async ({ locals, url }) => {
 			build: builds.items.find(({ id, number }) => [id, number].includes(asked('build')))?.id ?? '',
 			cell: cells.find(({ id, code }) => [id, code].includes(asked('cell')))?.id ?? '',
 			from: askedTime('from'),
-			to: askedTime('to')
+			to: askedTime('to'),
+			...wishFrom(deps.now(), deps.config.labTimeZone)
 		};
 		return {
 			form: await superValidate(start, zod4(BookingForm), { errors: false }),
@@ -52,10 +84,18 @@ export const load: PageServerLoad = async ({ locals, url }) => {
 				title,
 				state
 			})),
-			cells: cells.map(({ id, code, name, rigUpMinutes, rigDownMinutes, fuels }) => ({
+			/** What each build’s engine is expected to give, for the look at the absorber. */
+			engines: engines.map(({ client, code, maxSpeedRpm, expectedTorque }) => ({
+				client,
+				code,
+				maxSpeedRpm,
+				expectedTorque
+			})),
+			cells: cells.map(({ id, code, name, absorber, envelope, rigUpMinutes, rigDownMinutes, fuels }) => ({
 				id,
 				code,
 				name,
+				absorber: { ...absorber, envelope },
 				rigUpMinutes,
 				rigDownMinutes,
 				fuels
@@ -68,7 +108,34 @@ export const load: PageServerLoad = async ({ locals, url }) => {
 };
 
 export const actions: Actions = {
-	default: async ({ request, locals }) => {
+	fit: async ({ request, locals }) => {
+		const who = personMay(locals, 'booking.request');
+		const { deps } = locals;
+		const form = await superValidate(request, zod4(WishForm));
+		if (!form.valid) return fail(400, { form });
+		const { build, kind, fuelBatch, notBefore, notAfter, hours } = form.data;
+		const zone = deps.config.labTimeZone;
+		try {
+			const found = await findSlots(deps, who, {
+				build,
+				kind: kind || null,
+				fuelBatch: fuelBatch || null,
+				durationMinutes: Math.round(hours * MINUTES_PER_HOUR),
+				notBefore: labInstant(deps.config, notBefore, 'notBefore'),
+				notAfter: labInstant(deps.config, notAfter, 'notAfter')
+			});
+			const slots = found.slots.map(({ cell, cellName, from, to }) => ({
+				cell,
+				cellName,
+				from: wallClockText(new Date(from), zone),
+				to: wallClockText(new Date(to), zone)
+			}));
+			return { form, fit: { slots, refused: found.refused, note: found.note } };
+		} catch (cause) {
+			return refused(form, cause, { durationMinutes: 'hours' });
+		}
+	},
+	request: async ({ request, locals }) => {
 		const who = personMay(locals, 'booking.request');
 		const { deps } = locals;
 		const form = await superValidate(request, zod4(BookingForm));
