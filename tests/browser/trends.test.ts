@@ -7,7 +7,8 @@ import { closeDeps, openDeps } from '../../src/lib/server/deps';
 import { putFigures } from '../figures-of';
 import { useBrowser } from '../setup/browser';
 import { useStack } from '../setup/stack';
-import { expectAccessible, furnish, signedIn } from './runs-lab';
+import { expectAccessible } from './accessible';
+import { furnish, signedIn } from './runs-lab';
 
 const stack = useStack();
 const browser = useBrowser();

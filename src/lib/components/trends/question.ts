@@ -7,7 +7,7 @@ export const GROUP_WORDS = {
 	cell: 'cell',
 	month: 'month'
 } as const;
-export type GroupBy = keyof typeof GROUP_WORDS;
+type GroupBy = keyof typeof GROUP_WORDS;
 
 const FILTERS = [
 	'client',

@@ -1,6 +1,6 @@
 import type { Rule } from '../model';
 
-export type RuleChange =
+type RuleChange =
 	| { kind: 'changed'; before: Rule; after: Rule }
 	| { kind: 'added'; after: Rule }
 	| { kind: 'removed'; before: Rule };

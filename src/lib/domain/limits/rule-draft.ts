@@ -25,7 +25,7 @@ export interface RuleDraft {
 export type RuleDraftField = keyof RuleDraft;
 
 /** Subjects that are not on the list but written out. */
-export const WRITTEN_SUBJECTS = ['expression', 'column', 'figure'] as const;
+const WRITTEN_SUBJECTS = ['expression', 'column', 'figure'] as const;
 const isWritten = (subject: string) => (WRITTEN_SUBJECTS as readonly string[]).includes(subject);
 
 export const emptyRule = (): RuleDraft => ({

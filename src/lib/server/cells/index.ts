@@ -21,9 +21,7 @@ export {
 	TORQUE_PLACES,
 	TouchedQuery,
 	TouchedView,
-	type Cell,
-	type TorqueChain,
-	type Touched
+	type Cell
 } from './schemas';
 export { addTorqueChain, listTorqueChain, recomputeCell, runsBehind, runsTouchedBy } from './torque-chain';
 

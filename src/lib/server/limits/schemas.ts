@@ -92,7 +92,6 @@ export const LimitSetView = z.object({
 	inForceFrom: fields.instantOut,
 	rules: z.array(z.unknown())
 });
-export type LimitSet = z.input<typeof LimitSetView>;
 
 export const LimitSetVersionView = z.object({
 	version: z.number(),

@@ -3,11 +3,11 @@ import type { Principal } from '../access';
 import { reading } from '../db';
 import type { Deps } from '../deps';
 
-export const CHOSEN_BY = ['client', 'engine', 'build', 'fuel', 'batch', 'cell'] as const;
-export type ChosenBy = (typeof CHOSEN_BY)[number];
+const CHOSEN_BY = ['client', 'engine', 'build', 'fuel', 'batch', 'cell'] as const;
+type ChosenBy = (typeof CHOSEN_BY)[number];
 
 /** Something that runs can be filtered by. */
-export interface Choice {
+interface Choice {
 	/** What the address says: the code where one thing alone has it, else the id. */
 	value: string;
 	code: string;

@@ -19,23 +19,23 @@ const FLAGS = sql`flag g left join reduction d on d.id = g.reduction_id
 
 function selectRows(trx: Trx, metrics: readonly string[]) {
 	return selectHeads(trx).select((eb) => [
-			sql<number>`(select count(*) from ${FLAGS})`.as('flags'),
-			sql<Record<string, number> | null>`(select jsonb_object_agg(m.code, m.value) from metric m
+		sql<number>`(select count(*) from ${FLAGS})`.as('flags'),
+		sql<Record<string, number> | null>`(select jsonb_object_agg(m.code, m.value) from metric m
 				where m.run_id = r.id and m.is_current and m.code = any(${metrics}::text[]))`.as('figures'),
-			jsonObjectFrom(
-				eb
-					.selectFrom('reduction as d')
-					.innerJoin('trace as t', 't.id', 'd.traceId')
-					.whereRef('d.runId', '=', 'r.id')
-					.where('d.supersededAt', 'is', null)
-					.where('t.isPrimary', '=', true)
-					.select([
-						sql<number[] | null>`d.curve -> 'speed'`.as('speed'),
-						sql<(number | null)[] | null>`d.curve -> 'torque'`.as('torque'),
-						sql<(number | null)[] | null>`d.curve -> 'power'`.as('power')
-					])
-			).as('curve')
-		]);
+		jsonObjectFrom(
+			eb
+				.selectFrom('reduction as d')
+				.innerJoin('trace as t', 't.id', 'd.traceId')
+				.whereRef('d.runId', '=', 'r.id')
+				.where('d.supersededAt', 'is', null)
+				.where('t.isPrimary', '=', true)
+				.select([
+					sql<number[] | null>`d.curve -> 'speed'`.as('speed'),
+					sql<(number | null)[] | null>`d.curve -> 'torque'`.as('torque'),
+					sql<(number | null)[] | null>`d.curve -> 'power'`.as('power')
+				])
+		).as('curve')
+	]);
 }
 
 type Row = Awaited<ReturnType<ReturnType<typeof selectRows>['executeTakeFirstOrThrow']>>;

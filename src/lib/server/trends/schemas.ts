@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { fields } from '../api';
 import { RunFilter } from '../runs';
 
-export const GROUPS = ['build', 'engine', 'fuel', 'batch', 'cell', 'month'] as const;
+const GROUPS = ['build', 'engine', 'fuel', 'batch', 'cell', 'month'] as const;
 
 export const TrendQuery = RunFilter.extend({
 	metric: z.string().regex(/^[a-z][a-z0-9_]{1,60}$/, 'name a metric, e.g. bte_max'),

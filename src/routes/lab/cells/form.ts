@@ -7,7 +7,7 @@ import { ABSORBER_KINDS, TORQUE_PLACES, type Cell } from '$lib/server/cells';
 const number = z.number({ error: 'Give a number.' }).nullable().default(null);
 
 /** How torque is weighed, flat as a form is; bounds are the use case's own. */
-export const chainFields = {
+const chainFields = {
 	torqueAt: z.enum(TORQUE_PLACES).default('flange'),
 	rotorInertiaKgM2: number,
 	shaftInertiaKgM2: number,
@@ -50,7 +50,6 @@ export const ChainForm = z.object({
 	/** What to do with figures of the past that it changes; empty until that has been asked. */
 	past: z.enum(['', 'leave', 'recompute']).default('')
 });
-export type ChainFormData = z.infer<typeof ChainForm>;
 
 type Flat = Pick<CellFormData, keyof typeof chainFields>;
 
