@@ -24,15 +24,33 @@ export type JsonValue = JsonArray | JsonObject | JsonPrimitive;
 
 export type Timestamp = ColumnType<Date, Date | string, Date | string>;
 
+export interface AirReading {
+  at: Timestamp;
+  author: string;
+  barometerKpa: number | null;
+  clientId: string;
+  createdAt: Generated<Timestamp>;
+  humidityPct: number | null;
+  id: Generated<string>;
+  reason: string | null;
+  runId: string;
+  supersedesId: string | null;
+  temperatureC: number | null;
+}
+
 export interface Attachment {
   addedBy: string;
   buildId: string | null;
-  clientId: string;
+  clientId: string | null;
   contentType: string;
   createdAt: Generated<Timestamp>;
   filename: string;
+  fuelBatchId: string | null;
   id: Generated<string>;
   objectKey: string;
+  removedAt: Timestamp | null;
+  removedBy: string | null;
+  removedReason: string | null;
   runId: string | null;
   sha256: Buffer;
   sizeBytes: number;
@@ -54,9 +72,11 @@ export interface AuthInvitation {
   createdAt: Generated<Timestamp>;
   expiresAt: Timestamp;
   id: Generated<string>;
+  mailId: string;
   personId: string;
   secretSha256: Buffer;
   usedAt: Timestamp | null;
+  voidedAt: Timestamp | null;
 }
 
 export interface AuthPassword {
@@ -74,21 +94,25 @@ export interface AuthPerson {
   id: Generated<string>;
   role: string;
   units: Generated<string>;
+  version: Generated<number>;
 }
 
 export interface AuthReset {
   createdAt: Generated<Timestamp>;
   expiresAt: Timestamp;
   id: Generated<string>;
+  mailId: string;
   personId: string;
   secretSha256: Buffer;
   usedAt: Timestamp | null;
+  voidedAt: Timestamp | null;
 }
 
 export interface AuthSession {
   createdAt: Generated<Timestamp>;
   expiresAt: Timestamp;
   id: string;
+  seenAt: Generated<Timestamp>;
   userAgent: string | null;
   userId: string;
 }
@@ -159,15 +183,25 @@ export interface Cell {
   openingHours: Json | null;
   rigDownMinutes: Generated<number>;
   rigUpMinutes: Generated<number>;
-  rotorInertiaKgM2: number | null;
-  shaftInertiaKgM2: number | null;
-  torqueAt: Generated<string>;
   version: Generated<number>;
 }
 
 export interface CellFuel {
   cellId: string;
   fuelId: string;
+}
+
+export interface ChecklistEntry {
+  answer: string;
+  at: Timestamp;
+  author: string;
+  clientId: string;
+  createdAt: Generated<Timestamp>;
+  id: Generated<string>;
+  item: string;
+  listVersion: number;
+  reason: string | null;
+  runId: string;
 }
 
 export interface Client {
@@ -201,6 +235,15 @@ export interface Engine {
   strokeMm: number | null;
   strokesPerCycle: number;
   version: Generated<number>;
+}
+
+export interface EngineVersion {
+  clientId: string;
+  createdAt: Generated<Timestamp>;
+  createdBy: string | null;
+  engineId: string;
+  facts: Json;
+  version: number;
 }
 
 export interface Finding {
@@ -243,6 +286,8 @@ export interface Fuel {
   createdAt: Generated<Timestamp>;
   id: Generated<string>;
   name: string;
+  specification: Generated<Json>;
+  version: Generated<number>;
 }
 
 export interface FuelBatch {
@@ -253,6 +298,15 @@ export interface FuelBatch {
   id: Generated<string>;
   properties: Generated<Json>;
   version: Generated<number>;
+}
+
+export interface FuelBatchVersion {
+  clientId: string | null;
+  createdAt: Generated<Timestamp>;
+  createdBy: string | null;
+  fuelBatchId: string;
+  properties: Json;
+  version: number;
 }
 
 export interface Idempotency {
@@ -367,6 +421,7 @@ export interface Reduction {
 
 export interface Run {
   ambient: Generated<Json>;
+  auxiliaries: Generated<string[]>;
   bookingId: string | null;
   buildId: string;
   cellId: string;
@@ -374,8 +429,10 @@ export interface Run {
   correction: Generated<string>;
   createdAt: Generated<Timestamp>;
   endedAt: Timestamp | null;
+  exhaustBackPressureKpa: number | null;
   fuelBatchId: string;
   id: Generated<string>;
+  inletDepressionKpa: number | null;
   kind: string;
   limitSetId: string | null;
   loggedBy: string;
@@ -388,6 +445,23 @@ export interface Run {
   startedAt: Timestamp;
   state: Generated<string>;
   version: Generated<number>;
+}
+
+export interface TorqueChain {
+  armM: number | null;
+  cellId: string;
+  createdAt: Generated<Timestamp>;
+  createdBy: string | null;
+  gearEfficiency: number | null;
+  gearRatio: number | null;
+  gravityMps2: number | null;
+  id: Generated<string>;
+  reason: string;
+  rotorInertiaKgM2: number | null;
+  shaftInertiaKgM2: number | null;
+  torqueAt: string;
+  validFrom: Timestamp | null;
+  version: number;
 }
 
 export interface Trace {
@@ -414,6 +488,7 @@ export interface Trace {
 }
 
 export interface DB {
+  airReading: AirReading;
   attachment: Attachment;
   audit: Audit;
   "auth.invitation": AuthInvitation;
@@ -427,14 +502,17 @@ export interface DB {
   build: Build;
   cell: Cell;
   cellFuel: CellFuel;
+  checklistEntry: ChecklistEntry;
   client: Client;
   counter: Counter;
   engine: Engine;
+  engineVersion: EngineVersion;
   finding: Finding;
   flag: Flag;
   follow: Follow;
   fuel: Fuel;
   fuelBatch: FuelBatch;
+  fuelBatchVersion: FuelBatchVersion;
   idempotency: Idempotency;
   "jobs.worker": JobsWorker;
   limitSet: LimitSet;
@@ -446,5 +524,6 @@ export interface DB {
   person: Person;
   reduction: Reduction;
   run: Run;
+  torqueChain: TorqueChain;
   trace: Trace;
 }
