@@ -40,6 +40,8 @@ const rule = {
 const BODIES: Record<string, (things: Things) => unknown> = {
 	createClient: () => ({ code: code('N'), name: 'New' }),
 	createCell: () => ({ code: code('C'), name: 'New', absorber }),
+	changeCell: () => ({ rigUpMinutes: 30 }),
+	addTorqueChain: () => ({ torqueAt: 'flange', reason: 'matrix' }),
 	createFuel: () => ({ code: code('F'), name: 'New' }),
 	createFuelBatch: ({ client }) => ({ client, fuel: 'F1', code: code('Q') }),
 	createEngine: ({ client }) => ({
@@ -147,8 +149,13 @@ const bodyOf = ({ described }: Operation, things: Things) => {
 	if (!body) throw new Error(`tests/integration/access: tell a right body for ${described.operationId}`);
 	return body(things);
 };
-const queryOf = ({ described }: Operation) =>
-	described.operationId === 'readTrend' ? '?metric=peak_power' : '';
+const QUERIES: Record<string, string> = {
+	readTrend: '?metric=peak_power',
+	runsTouchedByTorqueChain: '?validFrom=2026-01-01T00:00:00Z'
+};
+const queryOf = ({ described }: Operation) => QUERIES[described.operationId] ?? '';
+/** They answer an unknown filter with nothing found, and say so: an address that someone kept is no fault. */
+const FORGIVING = new Set(['listRuns', 'readTrend']);
 
 beforeAll(async () => {
 	lab = await makeAccessLab(stack.current);
@@ -268,7 +275,9 @@ describe('every operation of the API', () => {
 					);
 				};
 				const [theirs, absent] = [await ask(ref), await ask(ABSENT)];
-				expect(theirs.status, `${label}?${parameter.name}`).toBe(400);
+				expect(theirs.status, `${label}?${parameter.name}`).toBe(
+					FORGIVING.has(operation.described.operationId) ? 200 : 400
+				);
 				expect(blind(theirs, ref)).toBe(blind(absent, ABSENT));
 				compared++;
 			}
