@@ -1,9 +1,11 @@
 import { sql } from 'kysely';
 import { beforeEach, describe, expect, it } from 'vitest';
+import { CHECKLIST } from '../../src/lib/domain/care/checklist';
 import type { Principal } from '../../src/lib/server/access';
 import { closeCell, confirmBooking, type Booking } from '../../src/lib/server/bookings';
 import { changeBuild } from '../../src/lib/server/builds';
 import { createFuel, createFuelBatch, NewFuel, NewFuelBatch } from '../../src/lib/server/fuels';
+import { answerCheck } from '../../src/lib/server/logbook';
 import { closeRun, flagRun, NewFlag, NewRun, openRun } from '../../src/lib/server/runs';
 import { readToday, type Today } from '../../src/lib/server/today';
 import { hour, useBookingLab } from './booking-lab';
@@ -89,7 +91,9 @@ describe('the board', () => {
 		const first = await slot(1, 4, at);
 		const second = await slot(6, 8, at);
 		lab.setNow(hour(2));
-		await open(at.operator, at, hour(1), first.id);
+		const run = await open(at.operator, at, hour(1), first.id);
+		for (const { code: item } of CHECKLIST)
+			await answerCheck(lab.deps, at.operator, run.id, { item, answer: 'done' });
 		const lane = laneOf(await readToday(lab.deps, at.operator), at.cell.code);
 		expect(lane.on).toMatchObject([
 			{
@@ -135,6 +139,19 @@ describe('the board', () => {
 		expect(codesOf(recorded.on[0]?.needs)).not.toContain('no_record');
 		expect(codesOf(recorded.on[0]?.needs)).not.toContain('build_not_ready');
 		expect(codesOf(recorded.on[0]?.needs)).not.toContain('no_trace');
+		const checks = async () =>
+			laneOf(await readToday(lab.deps, at.manager), at.cell.code).on[0]?.needs.filter(
+				({ code }) => code === 'checklist_open'
+			);
+		const message = (open: number) => `Checklist of ${run.number}: ${open} items not answered`;
+		expect(await checks()).toEqual([
+			{ code: 'checklist_open', message: message(CHECKLIST.length), run: run.number }
+		]);
+		const [first, second] = CHECKLIST.map(({ code }) => code);
+		await answerCheck(lab.deps, at.operator, run.id, { item: first!, answer: 'done' });
+		await answerCheck(lab.deps, at.operator, run.id, { item: second!, answer: 'done' });
+		await answerCheck(lab.deps, at.operator, run.id, { item: second!, answer: 'not_done' });
+		expect(await checks()).toMatchObject([{ message: message(CHECKLIST.length - 1) }]);
 
 		await closeRun(lab.deps, at.operator, run.id, null);
 		const closed = laneOf(await readToday(lab.deps, at.manager), at.cell.code);

@@ -128,7 +128,15 @@ const TOLD: Record<string, Told> = {
 	'/runs/[id]': {
 		read: 'run.read',
 		id: 'run',
-		actions: { close: 'run.open', accept: 'run.review', void: 'run.review', flag: 'run.flag', log: 'run.log' }
+		actions: {
+			close: 'run.open',
+			accept: 'run.review',
+			void: 'run.review',
+			flag: 'run.flag',
+			log: 'run.log',
+			follow: 'build.follow',
+			unfollow: 'build.follow'
+		}
 	},
 	'/runs/new': { read: 'run.open', actions: { open: 'run.open', prepare: 'engine.write' } },
 	'/today': { read: 'schedule.read' },

@@ -1,4 +1,5 @@
-import { labelOf } from '$lib/domain/display/labels';
+import { shownLabel } from '$lib/domain/display/figure';
+import type { UnitSystem } from '$lib/domain/display/unit-system';
 import type { Curve } from '$lib/domain/model';
 import { rises } from '../figures/curve-path';
 
@@ -9,14 +10,14 @@ export const LOWER = ['bte'] as const;
 export interface CurveTable {
 	/** Speeds in rising order. */
 	speed: number[];
-	/** By code, as printed: fractions in %. */
+	/** By code, as printed: in the reader's units, fractions in %. */
 	columns: Record<string, (number | null)[]>;
 	/** Points held one after another: not to be joined. */
 	isPoints: boolean;
 }
 
-/** The curve as a chart takes it: rows without a speed left out, speeds rising, efficiencies in %. */
-export function curveTable(curve: Curve, codes: readonly string[]): CurveTable {
+/** The curve as a chart takes it: rows without a speed left out, speeds rising, values as they are printed. */
+export function curveTable(curve: Curve, codes: readonly string[], units: UnitSystem): CurveTable {
 	const order = (curve.speed ?? [])
 		.map((rpm, at) => ({ rpm, at }))
 		.filter((row): row is { rpm: number; at: number } => row.rpm !== null)
@@ -25,10 +26,11 @@ export function curveTable(curve: Curve, codes: readonly string[]): CurveTable {
 	for (const code of codes) {
 		const values = curve[code];
 		if (!values?.some((value) => value !== null)) continue;
-		const scale = labelOf(code).percent ? 100 : 1;
+		const { as, percent } = shownLabel(code, undefined, units);
+		const scale = percent ? 100 : 1;
 		columns[code] = order.map(({ at }) => {
 			const value = values[at] ?? null;
-			return value === null ? null : value * scale;
+			return value === null ? null : as.value(value) * scale;
 		});
 	}
 	return { speed: order.map(({ rpm }) => rpm), columns, isPoints: !rises(curve.speed ?? []) };

@@ -37,7 +37,7 @@ export function niceTicks(values: readonly number[], wanted: number): Ticks {
 	const [low, high] = [(least + most) / 2 - range * 0.56, (least + most) / 2 + range * 0.56];
 	const rough = (high - low) / wanted;
 	const power = 10 ** Math.floor(Math.log10(rough));
-	const step = ([1, 2, 5].find((one) => one * power >= rough) ?? 10) * power;
+	const step = ([1, 2, 5].find((one) => one * power >= rough * 0.75) ?? 10) * power;
 	const first = Math.ceil(low / step - 1e-9);
 	const count = Math.floor(high / step + 1e-9) - first + 1;
 	const decimals = Math.max(0, -Math.floor(Math.log10(step) + 1e-9));

@@ -41,7 +41,8 @@ export interface Work {
 
 /** Where what is lacking is put right; null where this person cannot. */
 export function needHref(need: Work['needs'][number], work: Work, may: readonly string[]): string | null {
-	if (need.run) return `/runs/${encodeURIComponent(need.run)}`;
+	if (need.run)
+		return `/runs/${encodeURIComponent(need.run)}${need.code === 'checklist_open' ? '#checklist' : ''}`;
 	const { booking } = work;
 	if (!booking) return null;
 	if (need.code === 'no_record' && may.includes('run.open'))

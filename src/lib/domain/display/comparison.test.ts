@@ -5,6 +5,7 @@ import {
 	intervalText,
 	meanText,
 	readingOf,
+	scatterText,
 	signedText
 } from './comparison';
 
@@ -38,6 +39,18 @@ describe('differences', () => {
 		);
 		expect(comparisonSentence('peak_power', { key: 'B', n: 1, difference: null }, base)).toContain(
 			'n = 1 and 3'
+		);
+	});
+
+	it('are in the reader’s units, and a difference of temperatures moves to no other zero', () => {
+		expect(meanText('coolant_temp_max', 90, 'us')).toBe('194.00');
+		expect(scatterText('coolant_temp_max', 1, 'us')).toBe('1.80');
+		expect(signedText('coolant_temp_max', 10, 'us')).toBe('+18.00');
+		expect(intervalText('peak_power', [74.57, 149.14], 'us')).toBe('100.000 to 200.000');
+		expect(differenceUnit('peak_power', '', 'us')).toBe('hp');
+		const group = { key: 'B', n: 3, difference: of(7.457, 3.7285, 11.1855) };
+		expect(comparisonSentence('peak_power', group, { key: 'A', n: 4 }, 'us')).toBe(
+			'B is higher than A by 10.000 hp (95 % interval +5.000 to +15.000 hp, n = 3 and 4): more than scatter.'
 		);
 	});
 });

@@ -33,10 +33,28 @@ export async function getChecklist(deps: Deps, who: Principal, runRef: string): 
 	return reading(deps.pools, who, async (trx) => readChecklist(trx, (await resolve(trx, 'run', runRef)).id));
 }
 
-/** How many items nobody has answered as done or as not applying. */
-export async function openChecks(trx: Trx, runId: string): Promise<number> {
-	const { items } = await readChecklist(trx, runId);
-	return items.filter(({ holds }) => !holds || holds.answer === 'not_done').length;
+/** How many items nobody has answered as done or as not applying, of each of these runs. */
+export async function openChecks(trx: Trx, runIds: readonly string[]): Promise<Map<string, number>> {
+	const open = new Map(runIds.map((id) => [id, CHECKLIST.length]));
+	if (runIds.length === 0) return open;
+	const holding = await trx
+		.selectFrom('checklistEntry')
+		.distinctOn(['runId', 'item'])
+		.select(['runId', 'item', 'answer'])
+		.where('runId', 'in', [...runIds])
+		.where(
+			'item',
+			'in',
+			CHECKLIST.map(({ code }) => code)
+		)
+		.orderBy('runId')
+		.orderBy('item')
+		.orderBy('at', 'desc')
+		.orderBy('createdAt', 'desc')
+		.execute();
+	for (const { runId, answer } of holding)
+		if (answer !== 'not_done') open.set(runId, (open.get(runId) ?? 0) - 1);
+	return open;
 }
 
 /** An answer to one item; earlier ones stay. It records what somebody saw to and releases nothing. */

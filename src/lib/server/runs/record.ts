@@ -148,6 +148,9 @@ export async function flagRun(
 	});
 }
 
+/** A tablet's clock may be ahead of the server's. */
+const CLOCKS_APART_MS = 60_000;
+
 export async function addLogLine(
 	deps: Deps,
 	who: Principal,
@@ -155,6 +158,8 @@ export async function addLogLine(
 	input: z.output<typeof NewLogLine>
 ): Promise<z.input<typeof LogLineView>> {
 	if (input.supersedes && !input.reason) throw wrongField('reason', 'say why the earlier line is corrected.');
+	if (input.at && input.at.getTime() > deps.now().getTime() + CLOCKS_APART_MS)
+		throw wrongField('at', 'this lies ahead. A line tells what has been seen or done.');
 	return writing(deps.pools, who, async (trx) => {
 		const { id: runId, clientId } = await resolve(trx, 'run', ref);
 		if (input.supersedes) {

@@ -11,7 +11,7 @@ interface Record {
 /** What a record still lacks before somebody can judge it, in words. It gates nothing: the run may well be over. */
 export async function stillNeeded(trx: Trx, run: Record): Promise<string[]> {
 	if (run.state === 'accepted' || run.state === 'voided') return [];
-	const open = await openChecks(trx, run.id);
+	const open = (await openChecks(trx, [run.id])).get(run.id) ?? 0;
 	const trace = await trx
 		.selectFrom('trace')
 		.select('id')

@@ -1,12 +1,15 @@
 import { sql } from 'kysely';
 import type { Recorded } from '$lib/domain/scheduling';
 import type { Trx } from '../db';
+import { openChecks } from '../logbook';
 import type { RunOnDay } from './schemas';
 
 /** A run as the board judges and shows it. */
 export interface BoardRun extends Recorded {
 	cell: string;
 	bookingId: string | null;
+	/** Items of its pre-run checklist that nobody has answered; 0 once the record is closed. */
+	openChecks: number;
 	view: RunOnDay;
 }
 
@@ -20,6 +23,7 @@ export async function selectBoardRuns(trx: Trx, day: { from: Date; to: Date }): 
 		.innerJoin('person as p', 'p.id', 'r.loggedBy')
 		.leftJoin('booking as k', 'k.id', 'r.bookingId')
 		.select((eb) => [
+			'r.id',
 			'r.number',
 			'c.code as client',
 			'b.number as build',
@@ -62,13 +66,18 @@ export async function selectBoardRuns(trx: Trx, day: { from: Date; to: Date }): 
 		.orderBy('r.startedAt')
 		.orderBy('r.id')
 		.execute();
-	return rows.map(({ cell, bookingId, startedAt, endedAt, traces, unmapped, ...row }) => ({
+	const checks = await openChecks(
+		trx,
+		rows.filter(({ state }) => state === 'open').map(({ id }) => id)
+	);
+	return rows.map(({ id, cell, bookingId, startedAt, endedAt, traces, unmapped, ...row }) => ({
 		cell,
 		bookingId,
 		startedAt,
 		isOpen: row.state === 'open',
 		traces: Number(traces ?? 0),
 		unmapped: Number(unmapped ?? 0),
+		openChecks: checks.get(id) ?? 0,
 		view: {
 			...row,
 			kind: row.kind as RunOnDay['kind'],

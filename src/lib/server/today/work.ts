@@ -1,3 +1,4 @@
+import { formatCount } from '$lib/domain/display/format';
 import {
 	lateMinutes,
 	overrunMinutes,
@@ -32,16 +33,28 @@ const RECORD_WORDS: Record<Need, (run: string) => string> = {
 	needs_map: (run) => `Trace of ${run} asks for a channel map`
 };
 
+const checksNeeded = ({ openChecks, view }: BoardRun) =>
+	openChecks > 0
+		? [
+				{
+					code: 'checklist_open',
+					message: `Checklist of ${view.number}: ${formatCount(openChecks, 'item')} not answered`
+				}
+			]
+		: [];
+
 function needsOf(booking: Booking | null, runs: readonly BoardRun[], now: Date): Work['needs'] {
 	const slot = booking ? spanOf(booking) : null;
 	const isAhead = slot !== null && slot.to > now;
 	const record = runs.length
 		? runs.flatMap((run) =>
-				recordNeeds(slot, [run], now).map((code) => ({
-					code,
-					message: RECORD_WORDS[code](run.view.number),
-					run: run.view.number
-				}))
+				[
+					...checksNeeded(run),
+					...recordNeeds(slot, [run], now).map((code) => ({
+						code,
+						message: RECORD_WORDS[code](run.view.number)
+					}))
+				].map((need) => ({ ...need, run: run.view.number }))
 			)
 		: recordNeeds(slot, [], now).map((code) => ({ code, message: RECORD_WORDS[code](''), run: null }));
 	return [

@@ -5,6 +5,7 @@ import { z } from 'zod';
 import { FLAG_SEVERITIES } from '$lib/domain/model';
 import { may } from '$lib/server/access';
 import { listAttachments } from '$lib/server/attachments';
+import { followBuild, getBuild } from '$lib/server/builds';
 import { getChecklist, listReadings } from '$lib/server/logbook';
 import {
 	acceptRun,
@@ -17,7 +18,7 @@ import {
 	voidRun
 } from '$lib/server/runs';
 import { readCurve } from '$lib/server/traces';
-import { pageData, personMay, refused } from '$lib/server/web';
+import { labInstant, pageData, personMay, refused } from '$lib/server/web';
 import type { Actions, PageServerLoad } from './$types';
 
 const ReviewForm = z.object({ reason: z.string().trim().max(1000, 'At most 1000 characters.').default('') });
@@ -33,6 +34,11 @@ const FlagForm = z.object({
 });
 const LogForm = z.object({
 	text: z.string().trim().min(1, 'Write something.').max(4000, 'At most 4000 characters.'),
+	/** The lab's wall clock; empty: this moment. */
+	at: z
+		.string()
+		.regex(/^(\d{4}-\d\d-\d\dT\d\d:\d\d(:\d\d)?)?$/, 'Give a day and a time.')
+		.default(''),
 	supersedes: z.string().default(''),
 	reason: z.string().trim().max(1000, 'At most 1000 characters.').default('')
 });
@@ -43,13 +49,14 @@ export const load: PageServerLoad = async ({ locals, params, depends }) => {
 	depends('app:run');
 	return pageData({ locals }, async () => {
 		const run = await getRun(deps, who, params.id);
-		const [curve, log, history, attachments, checklist, readings] = await Promise.all([
+		const [curve, log, history, attachments, checklist, readings, build] = await Promise.all([
 			readCurve(deps, who, run.id),
 			listLogLines(deps, who, run.id),
 			runHistory(deps, who, run.id),
 			listAttachments(deps, who, { kind: 'run', ref: run.id }),
 			getChecklist(deps, who, run.id),
-			listReadings(deps, who, run.id)
+			listReadings(deps, who, run.id),
+			getBuild(deps, who, run.buildId)
 		]);
 		const [acceptForm, voidForm, flagForm, logForm] = await Promise.all([
 			superValidate(zod4(ReviewForm), { id: 'accept', errors: false }),
@@ -65,6 +72,7 @@ export const load: PageServerLoad = async ({ locals, params, depends }) => {
 			attachments,
 			checklist,
 			readings,
+			following: build.following,
 			acceptForm,
 			voidForm,
 			flagForm,
@@ -119,14 +127,31 @@ export const actions: Actions = {
 		const form = await superValidate(request, zod4(LogForm), { id: 'log' });
 		if (!form.valid) return fail(400, { form });
 		try {
-			const { text, supersedes, reason } = form.data;
+			const { text, at, supersedes, reason } = form.data;
 			await addLogLine(locals.deps, who, params.id, {
 				text,
+				...(at ? { at: labInstant(locals.deps.config, at, 'at') } : {}),
 				...(supersedes ? { supersedes, reason: reason || undefined } : {})
 			});
 		} catch (cause) {
 			return refused(form, cause);
 		}
 		return { form, done: 'The line is logged.' };
-	}
+	},
+	follow: ({ locals, params }) => follow(locals, params.id, true),
+	unfollow: ({ locals, params }) => follow(locals, params.id, false)
 };
+
+/** The build is followed, and with it this run and the next ones. */
+async function follow(locals: App.Locals, ref: string, isFollowing: boolean) {
+	const who = personMay(locals, 'build.follow');
+	await pageData({ locals }, async () => {
+		const { buildId } = await getRun(locals.deps, who, ref);
+		return followBuild(locals.deps, who, buildId, isFollowing);
+	});
+	return {
+		done: isFollowing
+			? 'You are mailed when a run of this build is flagged.'
+			: 'You are no longer mailed about this build.'
+	};
+}
