@@ -21,7 +21,7 @@ it('knows points held one after another from a curve', () => {
 	);
 });
 it('has no column for what was not measured', () => {
-	expect(Object.keys(curveTable(CURVE, ['power', 'torque', 'lambda_flow']).columns)).toEqual(['power']);
+	expect(Object.keys(curveTable(CURVE, ['power', 'torque', 'lambda_flow'], 'si').columns)).toEqual(['power']);
 });
 it('is in the units that the reader prefers', () => {
 	const { speed, columns } = curveTable(
