@@ -31,7 +31,8 @@ export default defineConfig({
 					name: 'browser',
 					environment: 'node',
 					include: ['tests/browser/**/*.test.ts'],
-					fileParallelism: false,
+					// Each file has a server and a browser of its own; two of them keep two cores busy.
+					maxWorkers: 2,
 					testTimeout: 120_000,
 					hookTimeout: 180_000
 				}
