@@ -2,7 +2,7 @@ import { expect, it } from 'vitest';
 import { groupsOf, metricOptions } from './metric-options';
 
 it('lists every known figure with its unit, in groups, and says which no run has', () => {
-	const options = metricOptions(['bte_max', 'raw_max_oil_temp']);
+	const options = metricOptions(['bte_max', 'raw_max_oil_temp'], 'si');
 	expect(options.find(({ value }) => value === 'bte_max')).toEqual({
 		value: 'bte_max',
 		label: 'Brake thermal efficiency, best, %',
@@ -20,3 +20,7 @@ it('lists every known figure with its unit, in groups, and says which no run has
 		'Channels'
 	]);
 });
+it('names the unit that the reader prefers', () =>
+	expect(metricOptions([], 'us').find(({ value }) => value === 'peak_power')!.label).toBe(
+		'Peak power, hp (no run has it)'
+	));

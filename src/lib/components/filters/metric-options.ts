@@ -1,17 +1,19 @@
-import { labelOf, METRIC_CODES, metricGroup } from '$lib/domain/display/labels';
+import { shownLabel } from '$lib/domain/display/figure';
+import { METRIC_CODES, metricGroup } from '$lib/domain/display/labels';
+import type { UnitSystem } from '$lib/domain/display/unit-system';
 
 export interface MetricOption {
 	value: string;
-	/** Name and unit. */
+	/** Name, and the unit that the reader prefers. */
 	label: string;
 	group: string;
 }
 
 /** Figures for a chooser: all that are known, those that runs have first said as such, and what else runs have. */
-export function metricOptions(present: readonly string[]): MetricOption[] {
+export function metricOptions(present: readonly string[], units: UnitSystem): MetricOption[] {
 	const has = new Set(present);
 	return [...METRIC_CODES, ...present.filter((code) => !METRIC_CODES.includes(code))].map((code) => {
-		const { label, unit } = labelOf(code);
+		const { label, unit } = shownLabel(code, undefined, units);
 		return {
 			value: code,
 			label: `${label}${unit ? `, ${unit}` : ''}${has.has(code) ? '' : ' (no run has it)'}`,
