@@ -272,9 +272,10 @@ describe('a change of a person', () => {
 		const next = await lab.api(
 			admin.token,
 			'GET',
-			`/audit?subject=person&subjectId=${person.id}&limit=1&cursor=${nextCursor}`
+			`/audit?subject=person&subjectId=${person.id}&limit=2&cursor=${nextCursor}`
 		);
 		expect((JSON.parse(next.text) as { items: object[] }).items).toMatchObject([
+			{ action: 'person.add_token', person: null, after: { token: 'test' } },
 			{ action: 'person.add', person: null }
 		]);
 	});
@@ -319,6 +320,24 @@ describe('one’s own account', () => {
 		expect((await lab.browse('/account', undefined, here)).status).toBe(200);
 		expect((await lab.browse('/account', undefined, there)).location).toContain('/sign-in');
 		expect((await lab.mailsTo(person.email, 1))[0]!.subject).toContain('was changed');
+	});
+
+	it('leaves a line in the trail for every token that is made or revoked, without its secret', async () => {
+		const person = await lab.person('engineer');
+		const cookie = (await lab.signIn(person.email))!;
+		const made = await lab.browse('/account?/create', { label: 'Bench logger' }, cookie);
+		const token = /trn\.([0-9a-f-]{36})\.[A-Za-z0-9_-]+/.exec(made.text)!;
+		expect((await lab.api(token[0], 'GET', '/me')).status).toBe(200);
+		const revoke = () => lab.browse('/account?/revoke', { id: token[1]! }, cookie);
+		expect((await revoke()).status).toBe(200);
+		expect((await lab.api(token[0], 'GET', '/me')).status).toBe(401);
+		expect((await revoke()).status).toBe(404);
+		const trail = await lab.api(admin.token, 'GET', `/audit?subjectId=${person.id}&person=${person.id}`);
+		expect((JSON.parse(trail.text) as { items: object[] }).items).toMatchObject([
+			{ action: 'person.revoke_token', before: { token: 'Bench logger' } },
+			{ action: 'person.add_token', after: { token: 'Bench logger' } }
+		]);
+		expect(trail.text).not.toContain(token[0].split('.')[2]);
 	});
 
 	it('tells its sessions and ends those that are named, one’s own alone', async () => {

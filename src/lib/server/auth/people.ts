@@ -19,7 +19,7 @@ const ADDRESS =
 export async function clientOfRole(trx: Trx, role: Role, ref: string | undefined): Promise<string | null> {
 	if ((role === 'client') !== (ref !== undefined))
 		throw badRequest('A person of the role client names a client; staff name none.', {
-			client: 'needed for the role client only.'
+			client: ref === undefined ? 'choose the client that they belong to.' : 'only the role client has one.'
 		});
 	if (ref === undefined) return null;
 	const clients = await trx.selectFrom('client').select(['id', 'code']).execute();

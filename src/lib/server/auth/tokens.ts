@@ -1,5 +1,5 @@
 import { requireMay, type Principal } from '../access';
-import type { Db } from '../db';
+import { recordAudit, SYSTEM, writingAccounts, type Actor, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { notFound, wrongField } from '../problem';
 import { newSecret, sameHash, sha256 } from './secrets';
@@ -7,14 +7,26 @@ import { newSecret, sameHash, sha256 } from './secrets';
 const PREFIX = 'trn';
 const USED_AT_MOST_EVERY_MS = 60_000;
 
+interface Owner {
+	personId: string;
+	clientId: string | null;
+}
+
 /** `trn.<id>.<secret>`: the id finds the row, and only the secret's hash is kept. */
-async function insertToken(auth: Db, personId: string, label: string): Promise<string> {
+async function insertToken(trx: Trx, actor: Actor, owner: Owner, label: string): Promise<string> {
 	const secret = newSecret();
-	const { id } = await auth
+	const { id } = await trx
 		.insertInto('auth.token')
-		.values({ personId, label, secretSha256: sha256(secret) })
+		.values({ personId: owner.personId, label, secretSha256: sha256(secret) })
 		.returning('id')
 		.executeTakeFirstOrThrow();
+	await recordAudit(trx, actor, {
+		action: 'person.add_token',
+		subject: 'person',
+		subjectId: owner.personId,
+		clientId: owner.clientId,
+		after: { token: label }
+	});
 	return `${PREFIX}.${id}.${secret}`;
 }
 
@@ -62,19 +74,21 @@ export async function principalOfToken(deps: Deps, text: string): Promise<Princi
 export async function createToken(deps: Deps, who: Principal, label: string): Promise<string> {
 	requireMay(who, 'account.own');
 	if (!label.trim()) throw wrongField('label', 'say what will use this token.');
-	return insertToken(deps.pools.auth, who.personId, label.trim().slice(0, 80));
+	return writingAccounts(deps.pools, who, (trx) => insertToken(trx, who, who, label.trim().slice(0, 80)));
 }
 
 /** For the operator's command line: no person is signed in there. @throws Problem 404 */
 export async function createTokenFor(deps: Deps, email: string, label: string): Promise<string> {
-	const person = await deps.pools.auth
-		.selectFrom('auth.person')
-		.select('id')
-		.where('email', '=', email.trim().toLowerCase())
-		.where('disabledAt', 'is', null)
-		.executeTakeFirst();
-	if (!person) throw notFound(`A person with the address ${email}`);
-	return insertToken(deps.pools.auth, person.id, label);
+	return writingAccounts(deps.pools, SYSTEM, async (trx) => {
+		const owner = await trx
+			.selectFrom('auth.person')
+			.select(['id as personId', 'clientId'])
+			.where('email', '=', email.trim().toLowerCase())
+			.where('disabledAt', 'is', null)
+			.executeTakeFirst();
+		if (!owner) throw notFound(`A person with the address ${email}`);
+		return insertToken(trx, SYSTEM, owner, label);
+	});
 }
 
 export async function listTokens(deps: Deps, who: Principal) {
@@ -88,12 +102,22 @@ export async function listTokens(deps: Deps, who: Principal) {
 }
 
 export async function revokeToken(deps: Deps, who: Principal, id: string): Promise<void> {
-	const { numUpdatedRows } = await deps.pools.auth
-		.updateTable('auth.token')
-		.set({ revokedAt: deps.now() })
-		.where('id', '=', id)
-		.where('personId', '=', who.personId)
-		.where('revokedAt', 'is', null)
-		.executeTakeFirst();
-	if (numUpdatedRows === 0n) throw notFound('This token');
+	await writingAccounts(deps.pools, who, async (trx) => {
+		const revoked = await trx
+			.updateTable('auth.token')
+			.set({ revokedAt: deps.now() })
+			.where('id', '=', id)
+			.where('personId', '=', who.personId)
+			.where('revokedAt', 'is', null)
+			.returning('label')
+			.executeTakeFirst();
+		if (!revoked) throw notFound('This token');
+		await recordAudit(trx, who, {
+			action: 'person.revoke_token',
+			subject: 'person',
+			subjectId: who.personId,
+			clientId: who.clientId,
+			before: { token: revoked.label }
+		});
+	});
 }
