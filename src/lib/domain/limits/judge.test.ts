@@ -220,7 +220,7 @@ describe('what cannot be judged is said', () => {
 		[rule({ subject: { expression: 'torque *' } }), /cannot be read/],
 		[rule({ subject: { expression: 'torqe * 2' } }), /no channel torqe/],
 		[rule({ subject: { metric: 'bte_max' } }), /no figure bte_max/],
-		[rule({ subject: { fuel: 'ron' } }), /states no ron/],
+		[rule({ subject: { fuel: 'ron' } }), /states no “Research octane number”/],
 		[rule({ limit: [1, 2] }), /does not go with “at_most”/],
 		[rule({ relation: 'between' }), /does not go with “between”/],
 		[rule({ limit: { over: 'speed', table: [] } }), /no known value/]
@@ -245,6 +245,18 @@ describe('a fuel batch by itself', () => {
 	const octane = rule({ title: 'Octane', subject: { fuel: 'ron' }, relation: 'at_least', limit: 95 });
 	it('crosses the rules that speak of it', () =>
 		expect(judgeFuel([octane, rule()], { ron: { value: 93 } }).map(({ rule }) => rule)).toEqual(['Octane']));
+	it('is told with the property’s name and unit, as people read them', () => {
+		const density = rule({
+			title: 'Density',
+			subject: { fuel: 'densityKgM3' },
+			relation: 'at_least',
+			limit: 820
+		});
+		const [flag] = judgeFuel([density], { densityKgM3: { value: 745.8 } });
+		expect(flag!.message).toContain('Density at 15 °C is 745.8 kg/m³');
+		expect(flag!.message).not.toContain('densityKgM3');
+		expect(flag!.worst.unit).toBe('kg/m³');
+	});
 	it('crosses none that it keeps, and none of what is not measured', () => {
 		expect(judgeFuel([octane], { ron: { value: 95 } })).toEqual([]);
 		expect(judgeFuel([octane], {})).toEqual([]);

@@ -1,4 +1,5 @@
 import { channelOf } from '../channels/catalogue';
+import { labelOf } from '../display/labels';
 import type {
 	Finding,
 	Flag,
@@ -207,7 +208,8 @@ function judgeValue(
 }
 
 function judgeFuelProperty(rule: Rule, value: number): Flag | null | { reason: string } {
-	return judgeValue(rule, 'fuel' in rule.subject ? rule.subject.fuel : '', '', value, NaN, null);
+	const { label, unit } = labelOf('fuel' in rule.subject ? rule.subject.fuel : '');
+	return judgeValue(rule, label, unit, value, NaN, null);
 }
 
 function judgeRule(
@@ -234,7 +236,7 @@ function judgeRule(
 	}
 	if ('fuel' in subject) {
 		const property = (context.fuel as Record<string, { value: number } | undefined>)[subject.fuel];
-		if (!property) return { reason: `the fuel batch states no ${subject.fuel}` };
+		if (!property) return { reason: `the fuel batch states no “${labelOf(subject.fuel).label}”` };
 		return judgeFuelProperty(rule, property.value);
 	}
 	return judgeTrace(rule, trace);
