@@ -1,6 +1,9 @@
-import { open } from 'node:fs/promises';
+import { createHash } from 'node:crypto';
+import { open, readFile, writeFile } from 'node:fs/promises';
 import { fileTypeFromBuffer } from 'file-type';
+import type { Spooled } from '../files';
 import { Problem } from '../problem';
+import { clearPosition } from './position';
 
 /** What is kept, by what the bytes say; each with the endings that a name of it may have. */
 const KEPT: Record<string, readonly string[]> = {
@@ -35,6 +38,15 @@ export async function contentTypeOf(file: string): Promise<string> {
 
 const notKept = (why: string) =>
 	new Problem(415, 'Not kept', `Photographs (JPEG, PNG, WebP) and PDF documents are kept. ${why}`);
+
+/** The file without the place where a photograph was taken, and with the hash of what is left. */
+export async function withoutPosition(spooled: Spooled, contentType: string): Promise<Spooled> {
+	if (!contentType.startsWith('image/')) return spooled;
+	const bytes = await readFile(spooled.file);
+	if (!clearPosition(bytes, contentType)) return spooled;
+	await writeFile(spooled.file, bytes);
+	return { ...spooled, sha256: createHash('sha256').update(bytes).digest() };
+}
 
 /** The name with an ending that fits: a picture called `note.html` must not lie on a disk as a page. */
 export function fittingName(filename: string, contentType: string): string {

@@ -4,7 +4,7 @@ import { reading, recordAudit, writing, type Trx } from '../db';
 import type { Deps } from '../deps';
 import { asDownload, keepUnderHash, safeName, withSpooled, type Upload } from '../files';
 import { conflict, notFound } from '../problem';
-import { contentTypeOf, fittingName } from './content';
+import { contentTypeOf, fittingName, withoutPosition } from './content';
 import type { Attachment, RemoveAttachment } from './schemas';
 import { columnOf, findSubject, refuseDecided, type SubjectRef } from './subject';
 
@@ -28,8 +28,9 @@ export async function addAttachment(
 		what: 'An attachment',
 		advice: 'Send a smaller picture, or split the document.'
 	};
-	return withSpooled(upload, limit, async (spooled) => {
-		const contentType = await contentTypeOf(spooled.file);
+	return withSpooled(upload, limit, async (sent) => {
+		const contentType = await contentTypeOf(sent.file);
+		const spooled = await withoutPosition(sent, contentType);
 		const filename = fittingName(safeName(upload.filename, 'attachment'), contentType);
 		const owner = subject.clientId ? `clients/${subject.clientId}` : 'lab';
 		const objectKey = await keepUnderHash(deps, `${owner}/attachments`, spooled);
@@ -101,7 +102,7 @@ export async function listAttachments(deps: Deps, who: Principal, of: SubjectRef
 	});
 }
 
-/** The file as it came in. A picture may be shown by an `<img>` of our own pages; opened by itself it is a download. */
+/** The file as it came in, but for a photograph's position. A picture may be shown by an `<img>` of our own pages; opened by itself it is a download. */
 export async function downloadAttachment(deps: Deps, who: Principal, id: string): Promise<Response> {
 	const kept = await reading(deps.pools, who, (trx) =>
 		trx
