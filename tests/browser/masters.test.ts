@@ -52,8 +52,12 @@ describe('an engine', () => {
 		await engineer.getByRole('link', { name: 'Change engine' }).click();
 		await engineer.getByLabel('Compression ratio').fill('0.5');
 		await engineer.getByLabel('Displacement').fill('2.4');
+		await engineer.getByLabel('Cylinders').fill('4.5');
 		await save('Save engine');
 		await engineer.getByText('Must be above 1.').waitFor();
+		await engineer.getByText('Give a whole number.').waitFor();
+		expect(await engineer.getByLabel('Cylinders').inputValue()).toBe('4.5');
+		await engineer.getByLabel('Cylinders').fill('4');
 		expect(await engineer.getByLabel('Displacement').inputValue()).toBe('2.4');
 		await engineer.getByLabel('Compression ratio').fill('10.5');
 		await engineer.getByLabel('Why it is changed').fill('Measured again');

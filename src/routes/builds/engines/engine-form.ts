@@ -5,6 +5,8 @@ import type { EngineFields } from '$lib/server/engines';
 
 const number = z.number({ error: 'Give a number.' });
 const above = number.positive('Must be above zero.').max(1e9, 'Too large.');
+/** Not `int()`: what a form reads as an integer loses its decimals before anyone is told. */
+const wholeNumber = number.refine(Number.isInteger, 'Give a whole number.');
 /** Starts empty instead of at 0, and must not stay so. */
 const needed = (rule: z.ZodNumber) =>
 	rule
@@ -15,7 +17,7 @@ const needed = (rule: z.ZodNumber) =>
 const facts = {
 	name: z.string().trim().min(1, 'Give it a name.').max(200, 'At most 200 characters.'),
 	displacementL: needed(above.max(5000, 'In litres; this is too large.')),
-	cylinders: needed(number.int('Give a whole number.').min(1, 'At least 1.').max(64, 'At most 64.')),
+	cylinders: needed(wholeNumber.min(1, 'At least 1.').max(64, 'At most 64.')),
 	strokesPerCycle: z.enum(['2', '4']).default('4'),
 	ignition: z.enum(['spark', 'compression']).default('spark'),
 	induction: z.enum(['', ...INDUCTIONS]).default(''),

@@ -17,7 +17,11 @@ export const BenchForm = z.object({
 		.nullable()
 		.default(null)
 		.refine((value) => value !== null, 'Give a number.'),
-	cylinders: number.int('Give a whole number.').min(1, 'At least 1.').max(64, 'At most 64.').default(4),
+	cylinders: number
+		.refine(Number.isInteger, 'Give a whole number.')
+		.min(1, 'At least 1.')
+		.max(64, 'At most 64.')
+		.default(4),
 	strokesPerCycle: z.enum(['2', '4']).default('4'),
 	ignition: z.enum(['spark', 'compression']).default('spark'),
 	induction: z.enum(INDUCTIONS).default('natural'),
