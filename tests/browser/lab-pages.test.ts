@@ -49,7 +49,7 @@ describe('a cell', () => {
 		await manager.getByLabel('Torque, at most').fill('480');
 		await manager.getByRole('button', { name: 'Add point' }).press('Enter');
 		await paste(manager, '600\t300\n1200\t480\n9000\thigh');
-		await manager.getByLabel('Fuels plumbed').getByLabel('F1').check();
+		await manager.getByRole('group', { name: 'Fuels plumbed' }).getByLabel('F1').check();
 		await manager.getByLabel('Open').selectOption('hours');
 		await manager.getByLabel('Monday').fill('6.30 - 20');
 		await manager.getByRole('button', { name: 'Same as Monday until Friday' }).click();
@@ -130,6 +130,7 @@ describe('a limit set', () => {
 		await coolant.getByLabel('Judges').selectOption('channel:coolant_temp');
 		await coolant.getByLabel('Limit, °C').fill('110');
 		await manager.getByRole('button', { name: 'Add rule' }).press('Enter');
+		await manager.locator(':focus[name="rules.1.title"]').waitFor();
 		await manager.keyboard.type('Ratio');
 		const ratio = manager.getByRole('group', { name: 'Ratio' });
 		await ratio.getByLabel('Judges').selectOption('expression');
