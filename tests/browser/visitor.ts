@@ -60,3 +60,20 @@ export async function settled(page: Page): Promise<void> {
 		await Promise.race([ended, new Promise((late) => setTimeout(late, 1000))]);
 	});
 }
+
+/** What a keyboard would act on now: the name of its field, else its words; nothing where it is on no part of the page. */
+export const focused = (page: Page): Promise<string> =>
+	page.evaluate(() => {
+		const at = document.activeElement === document.body ? null : document.activeElement;
+		return (at?.getAttribute('name') ?? at?.textContent ?? '').trim();
+	});
+
+/** Goes on by the Tab key until the focus is there. */
+export async function tabTo(page: Page, what: string | RegExp): Promise<void> {
+	for (let steps = 0; steps < 90; steps++) {
+		await page.keyboard.press('Tab');
+		const at = await focused(page);
+		if (typeof what === 'string' ? at === what : what.test(at)) return;
+	}
+	throw new Error(`The keyboard does not reach ${what}.`);
+}
