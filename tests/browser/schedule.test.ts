@@ -5,7 +5,7 @@ import { useBrowser } from '../setup/browser';
 import { useStack } from '../setup/stack';
 import { expectAccessible } from './accessible';
 import { addMaker, type Maker } from './people';
-import { Complaints, openVisitor, signIn } from './visitor';
+import { Complaints, focused, openVisitor, signIn } from './visitor';
 
 /** The schedule as people work on it: drawing, dragging and keys, with another person looking on. */
 const ZONE = 'Europe/Stockholm';
@@ -174,7 +174,7 @@ describe('the schedule', () => {
 		await manager.keyboard.press('Enter');
 		await toast(manager, `${number} is moved.`);
 		expect(await bar(manager, number).innerText()).toMatch(/08:30\s*[–-]\s*11:00/);
-		expect(await manager.evaluate(() => document.activeElement?.textContent)).toContain(number);
+		expect(await focused(manager)).toContain(number);
 	});
 
 	it('tells who moves what another has just moved how it stands now', async () => {

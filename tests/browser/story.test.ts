@@ -7,7 +7,7 @@ import { bytesOf, truthOf } from '../traces/traces';
 import { choosePassword, entryOf, linkFrom, mailTo } from './mails';
 import { PASSWORD } from './people';
 import { furnishStory, type StoryLab } from './story-lab';
-import { Complaints, focused, openVisitor, signIn, tabTo } from './visitor';
+import { Complaints, openVisitor, signIn, tabTo } from './visitor';
 
 /** One slot from the invitation of the one who asks for it to the trend it ends in: six roles in turn, and a rival who sees none of it. */
 const ZONE = 'Europe/Stockholm';
