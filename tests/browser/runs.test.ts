@@ -115,7 +115,12 @@ describe('a run from its record to its acceptance', () => {
 		await log.getByLabel('New line').fill('Coolant at 84 °C.');
 		await log.getByRole('button', { name: 'Add line' }).click();
 		await log.getByRole('listitem').filter({ hasText: 'Coolant at 84 °C.' }).waitFor();
-		await log.locator('summary').click();
+		await log
+			.getByRole('listitem')
+			.filter({ hasText: 'Coolant at 84 °C.' })
+			.locator('summary')
+			.first()
+			.click();
 		await log.getByLabel('Corrected line').fill('Coolant at 48 °C.');
 		await log.getByRole('button', { name: 'Correct line' }).click();
 		await log.getByText(/say why the earlier line is corrected/i).waitFor();

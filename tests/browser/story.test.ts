@@ -287,7 +287,7 @@ describe('the engineer', () => {
 
 	it('finds it in the trend of its build, with n, and the way back to the run', async () => {
 		await engineer.goto('/trends?metric=bte_max&groupBy=build', { waitUntil: 'networkidle' });
-		const row = section(engineer, 'Brake thermal efficiency, best by build')
+		const row = section(engineer, 'Brake thermal efficiency, best by build, table')
 			.getByRole('row')
 			.filter({ hasText: 'HB-B1' });
 		expect((await row.innerText()).replace(/\s+/g, ' ')).toMatch(/HB-B1 As delivered 2 3[56]\.\d+/);

@@ -102,7 +102,7 @@ describe('trends', () => {
 		await engineer.getByLabel('To', { exact: true }).fill('2026-03-02');
 		await engineer.getByLabel('To', { exact: true }).press('Enter');
 		await engineer.waitForURL(/to=2026-03-02/);
-		expect(await sentence()).toMatch(/^Peak power by cell, all runs that are not void,\s*until 2 Mar 2026/);
+		expect(await sentence()).toMatch(/^Peak power, by cell, all runs that are not void,\s*until 2 Mar 2026/);
 		await engineer.getByRole('link', { name: 'Remove until 2 Mar 2026' }).click();
 		await engineer.waitForURL((url) => !url.searchParams.has('to'));
 		await engineer.goBack();
