@@ -119,54 +119,6 @@ describe('a cell', () => {
 	});
 });
 
-describe('a limit set', () => {
-	it('keeps what was typed when a rule is wrong, and shows the parser’s sentence at its field', async () => {
-		await manager.goto('/lab/limits/new', { waitUntil: 'networkidle' });
-		await manager.getByLabel('Code').fill('L1');
-		await manager.getByLabel('Title').first().fill('House limits');
-		const first = manager.getByRole('group', { name: 'Rule 1' });
-		await first.getByLabel('Title').fill('Coolant');
-		const coolant = manager.getByRole('group', { name: 'Coolant' });
-		await coolant.getByLabel('Judges').selectOption('channel:coolant_temp');
-		await coolant.getByLabel('Limit, °C').fill('110');
-		await manager.getByRole('button', { name: 'Add rule' }).press('Enter');
-		await manager.locator(':focus[name="rules.1.title"]').waitFor();
-		await manager.keyboard.type('Ratio');
-		const ratio = manager.getByRole('group', { name: 'Ratio' });
-		await ratio.getByLabel('Judges').selectOption('expression');
-		await ratio.getByLabel('Expression').fill('fuel_flow / (power');
-		await ratio.getByLabel('Limit', { exact: true }).fill('0.3');
-		await manager.getByRole('button', { name: 'Add limit set' }).click();
-		await ratio.getByText('a bracket is not closed').waitFor();
-		expect(await coolant.getByLabel('Limit, °C').inputValue()).toBe('110');
-		await ratio.getByLabel('Expression').fill('fuel_flow / power');
-		await manager.getByRole('button', { name: 'Move Ratio up' }).press('Enter');
-		await ratio.getByLabel('Limit as').selectOption('table');
-		await ratio.getByRole('button', { name: 'Add point' }).press('Enter');
-		await paste(manager, '2000;0.30\n6000;0.27');
-		await ratio.getByRole('img', { name: /over Engine speed/ }).waitFor();
-		await expectAccessible(manager);
-		await manager.getByRole('button', { name: 'Add limit set' }).click();
-		await manager.waitForURL(/\/lab\/limits\/[0-9a-f-]{36}$/);
-		const rules = manager.getByRole('region', { name: /Rules in force, 2 rules/ });
-		expect(await rules.getByRole('heading', { level: 3 }).allTextContents()).toEqual(['Ratio', 'Coolant']);
-		await manager.getByText('Trunnion is no interlock').waitFor();
-	});
-
-	it('gets a new version, whose page says first what changed', async () => {
-		await manager.getByRole('link', { name: 'New version' }).click();
-		const coolant = manager.getByRole('group', { name: 'Coolant' });
-		await coolant.getByLabel('Limit, °C').fill('105');
-		await manager.getByRole('button', { name: 'Remove Ratio' }).click();
-		await manager.getByRole('button', { name: 'Add version' }).click();
-		await manager.getByText('Changed: Coolant').waitFor();
-		await manager.getByText('Removed: Ratio').waitFor();
-		await manager.getByText('Coolant temperature at most 105 °C (review)').waitFor();
-		await expectAccessible(manager);
-		await manager.goto('/lab/limits?q=coolant', { waitUntil: 'networkidle' });
-		await manager.getByRole('link', { name: 'L1' }).waitFor();
-		await expectAccessible(manager);
-	});
-
+describe('these pages', () => {
 	it('left no complaint of a browser behind', () => expect(complaints.said).toEqual([]));
 });
